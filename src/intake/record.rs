@@ -1,0 +1,411 @@
+//! One line of a table becomes a row and a provisional fate.
+
+use chrono::NaiveDate;
+
+use super::condition::{Condition, condition};
+use super::date::{DateText, date};
+use super::names::{Names, day_number};
+use super::number::number;
+use super::qualifier::{Code as QualifierCode, Strictest, codes, usual};
+use super::rows::{Dilution, Kind, Row, Written};
+use super::sample_type::{non_result, sample_type};
+use super::split::Line;
+use super::table::Table;
+use super::texts::Texts;
+use super::value::{ResultCell, Said, reading, result_cell};
+use crate::ledger::told::Expected;
+use crate::ledger::{Fate, NonResult, QualityControl, SetAside, Told};
+use crate::site::{Column, DecisionKind, Meaning, ResultsRule, SampleType, Site};
+use crate::terms::Unit;
+
+/// Reads the records of one table.
+pub struct RecordReader<'a> {
+    /// The site.
+    pub site: &'a Site,
+    /// How the file is declared.
+    pub rule: &'a ResultsRule,
+    /// The file as a table.
+    pub table: &'a Table,
+    /// The file's place in the run.
+    pub file: u32,
+}
+
+/// A row, its provisional fate, and what is told about it.
+pub struct Read {
+    /// The row.
+    pub row: Row,
+    /// Its fate so far.
+    pub fate: Fate,
+    /// What is told.
+    pub told: Vec<Told>,
+}
+
+/// What the marks of a record say together.
+struct Marks {
+    strictest: Option<Strictest>,
+    estimated: bool,
+    dilution: Dilution,
+    unknown: Option<Fate>,
+}
+
+impl RecordReader<'_> {
+    /// Reads one line.
+    pub fn read(&self, line: &Line, names: &mut Names, texts: &mut Texts) -> Read {
+        let mut told = Vec::new();
+        let written = self.written(line, texts);
+        let read_date = self.date(line, texts.text(written.date));
+        let (day, time) = match &read_date {
+            Ok((day, time)) => (Some(*day), texts.code(time)),
+            Err(_) => (None, 0),
+        };
+        let resolved = names.resolve(self, line, day, texts, &mut told);
+        let mut row = Row {
+            file: self.file,
+            line: line.line,
+            written,
+            site: resolved.site,
+            well: resolved.well,
+            analyte: resolved.analyte,
+            cas: resolved.cas,
+            listed: resolved.listed,
+            fraction: resolved.fraction,
+            depth: written.depth,
+            day: day.map(day_number),
+            time,
+            reading: None,
+            unit: None,
+            basis: 0,
+            reporting_limit: None,
+            detection_limit: None,
+            estimated: false,
+            kind: Kind::Other,
+            dilution: Dilution::None,
+            excluded_by: None,
+        };
+        row.excluded_by = self.decided(DecisionKind::Exclude, &row, day, texts);
+        let kind = self.kind(line, texts.text(written.result), &mut told);
+        let fate = match kind {
+            _ if self.table.is_ragged(line) => Fate::SetAside(SetAside::Ragged),
+            _ if resolved.other_site => Fate::SetAside(SetAside::OtherSite),
+            Err(fate @ (Fate::QualityControl(_) | Fate::SetAside(_))) => fate,
+            _ if row.well == 0 => Fate::SetAside(SetAside::NoWell),
+            Err(gap) => gap,
+            Ok(kind) => {
+                row.kind = kind;
+                let named = resolved.refused.map_or(Ok(()), Err);
+                let dated = named.and(read_date.map(|_| ()));
+                let fate = match dated {
+                    Ok(()) => self.value(line, &mut row, day, texts, &mut told),
+                    Err(fate) => Err(fate),
+                };
+                match (fate, kind) {
+                    (_, Kind::Duplicate) => Fate::QualityControl(QualityControl::Duplicate),
+                    (Ok(()), _) => Fate::Candidate,
+                    (Err(fate), _) => fate,
+                }
+            }
+        };
+        Read { row, fate, told }
+    }
+
+    fn written(&self, line: &Line, texts: &mut Texts) -> Written {
+        let mut code = |column| texts.code(self.table.cell(line, column));
+        let reporting_limit = match code(Column::ReportingLimit) {
+            0 => code(Column::DetectionLimit),
+            limit => limit,
+        };
+        Written {
+            well: code(Column::Well),
+            analyte: code(Column::Analyte),
+            date: code(Column::Date),
+            result: code(Column::Result),
+            unit: code(Column::Unit),
+            reporting_limit,
+            sample_id: code(Column::SampleId),
+            depth: code(Column::Depth),
+            fraction: code(Column::Fraction),
+            qualifier: texts.code(&self.table.qualifiers(line)),
+        }
+    }
+
+    /// The sample date and the time of day, or the fate that a cell without a date has.
+    fn date(&self, line: &Line, text: &str) -> Result<(NaiveDate, String), Fate> {
+        if text.is_empty() {
+            return Err(Fate::SetAside(SetAside::NoDate));
+        }
+        match date(text, self.table.dates) {
+            DateText::Date(date, time) => {
+                let column = self.table.cell(line, Column::Time);
+                Ok((date, if column.is_empty() { time } else { column.to_owned() }))
+            }
+            DateText::Ambiguous => Err(Fate::SetAside(SetAside::AmbiguousDate)),
+            DateText::Unreadable => Err(Fate::SetAside(SetAside::UnreadableDate)),
+        }
+    }
+
+    /// Sample or duplicate, or the fate of a record that is neither.
+    fn kind(&self, line: &Line, result: &str, told: &mut Vec<Told>) -> Result<Kind, Fate> {
+        let text = self.table.cell(line, Column::SampleType);
+        let declared = self.rule.sample_types.get(text).copied();
+        let kind = match (declared, text.is_empty()) {
+            (Some(kind), _) => kind,
+            (None, true) => non_result(result).unwrap_or(SampleType::Regular),
+            (None, false) => match sample_type(text) {
+                Some(SampleType::Regular) => non_result(result).unwrap_or(SampleType::Regular),
+                Some(kind) => kind,
+                None => {
+                    told.push(Told::UnknownSampleType { written: text.to_owned() });
+                    return Err(Fate::SetAside(SetAside::UnknownSampleType));
+                }
+            },
+        };
+        match kind {
+            SampleType::Regular => Ok(Kind::Sample),
+            SampleType::Duplicate => Ok(Kind::Duplicate),
+            SampleType::Blank => Err(Fate::QualityControl(QualityControl::Blank)),
+            SampleType::Spike => Err(Fate::QualityControl(QualityControl::Spike)),
+            SampleType::Reference => Err(Fate::QualityControl(QualityControl::Reference)),
+            SampleType::Dry => Err(Fate::NonResult(NonResult::Dry)),
+            SampleType::Destroyed => Err(Fate::NonResult(NonResult::Destroyed)),
+            SampleType::NoAccess => Err(Fate::NonResult(NonResult::NoAccess)),
+            SampleType::FreeProduct => Err(Fate::NonResult(NonResult::FreeProduct)),
+            SampleType::NotSampled => Err(Fate::NonResult(NonResult::NotSampled)),
+            SampleType::NotAnalysed => Err(Fate::NonResult(NonResult::NotAnalysed)),
+            SampleType::NotReported => Err(Fate::NonResult(NonResult::NotReported)),
+        }
+    }
+
+    /// Marks, unit, limits and number of a record whose well, analyte and date stand.
+    fn value(
+        &self,
+        line: &Line,
+        row: &mut Row,
+        day: Option<NaiveDate>,
+        texts: &mut Texts,
+        told: &mut Vec<Told>,
+    ) -> Result<(), Fate> {
+        let marks = self.marks(line, row, day, texts, told)?;
+        row.estimated = marks.estimated;
+        row.dilution = marks.dilution;
+        let cell = result_cell(texts.text(row.written.result), self.table.numbers);
+        if cell == ResultCell::Unreadable {
+            let found = texts.text(row.written.result).to_owned();
+            told.push(Told::Unreadable { column: "result", found, expected: Expected::Result });
+            return Err(Fate::SetAside(SetAside::UnreadableNumber));
+        }
+        let nothing = cell == ResultCell::Empty
+            && !matches!(
+                marks.strictest,
+                Some(Strictest::NonDetect | Strictest::AboveRange | Strictest::Unknown)
+            );
+        if nothing {
+            return Err(Fate::SetAside(SetAside::NoResult));
+        }
+        let unit = self.unit(line, row, texts, told)?;
+        row.unit = Some(unit);
+        row.reporting_limit = self.limit(line, Column::ReportingLimit, unit, told);
+        row.detection_limit = self.limit(line, Column::DetectionLimit, unit, told);
+        let uncertainty = number(self.table.cell(line, Column::Uncertainty), self.table.numbers)
+            .filter(|uncertainty| *uncertainty > 0.0)
+            .zip(self.rule.uncertainty);
+        let (read, note) = reading(&Said {
+            cell,
+            unit,
+            strictest: marks.strictest,
+            reporting_limit: row.reporting_limit,
+            detection_limit: row.detection_limit,
+            uncertainty,
+        });
+        row.reading = read.as_ref().ok().copied();
+        // A code without a legend holds the record back whatever its number says.
+        if let Some(fate) = marks.unknown {
+            return Err(fate);
+        }
+        told.extend(note);
+        read.map(|_| ())
+    }
+
+    /// What qualifiers, detection condition and status say.
+    fn marks(
+        &self,
+        line: &Line,
+        row: &Row,
+        day: Option<NaiveDate>,
+        texts: &Texts,
+        told: &mut Vec<Told>,
+    ) -> Result<Marks, Fate> {
+        let mut marks =
+            Marks { strictest: None, estimated: false, dilution: Dilution::None, unknown: None };
+        let status = self.table.cell(line, Column::Status);
+        if status.eq_ignore_ascii_case("rejected") {
+            return Err(Fate::SetAside(SetAside::Rejected));
+        }
+        let decided = self
+            .decided(DecisionKind::UseQualifier, row, day, texts)
+            .and_then(|place| self.site.decisions[usize::from(place)].means);
+        let qualifier = texts.text(row.written.qualifier);
+        for code in codes(qualifier) {
+            let legend = self.legend(|q| q.code.as_deref() == Some(code));
+            match legend.map_or_else(|| usual(code), QualifierCode::Means) {
+                QualifierCode::Means(meaning) => marks.add(meaning, code, told),
+                QualifierCode::NonDetectEstimated => {
+                    marks.add(Meaning::NonDetect, code, told);
+                    marks.estimated = true;
+                }
+                QualifierCode::HoldingTime => told.push(Told::HoldingTime),
+                QualifierCode::NeedsLegend => match decided {
+                    Some(meaning) => marks.add(meaning, code, told),
+                    None => {
+                        told.push(Told::UnknownQualifier { code: code.to_owned() });
+                        marks.hold(Strictest::Unknown, SetAside::QualifierNeedsLegend);
+                        if code.eq_ignore_ascii_case("e") {
+                            marks.dilution = Dilution::OverCalibration;
+                        }
+                    }
+                },
+            }
+        }
+        let words = self.table.cell(line, Column::DetectionCondition);
+        if !words.is_empty() {
+            let legend = self.legend(|q| q.condition.as_deref() == Some(words));
+            match legend.map_or_else(|| condition(words), Condition::Means) {
+                Condition::Means(meaning) => marks.add(meaning, "", told),
+                Condition::Gap => return Err(Fate::NonResult(NonResult::NotReported)),
+                Condition::NeedsLegend => {
+                    told.push(Told::UnknownCondition { condition: words.to_owned() });
+                    marks.hold(Strictest::Unknown, SetAside::ConditionNeedsLegend);
+                }
+            }
+        }
+        match marks.strictest {
+            Some(Strictest::Rejected) => Err(Fate::SetAside(SetAside::Rejected)),
+            _ => Ok(marks),
+        }
+    }
+
+    /// The site file's meaning of a code or condition in this file.
+    fn legend(&self, is: impl Fn(&crate::site::Qualifier) -> bool) -> Option<Meaning> {
+        let name = self.table.name.as_str();
+        let leaf = name.rsplit('/').next().unwrap_or(name);
+        let here = |patterns: &[String]| {
+            patterns.is_empty()
+                || patterns.iter().any(|pattern| {
+                    glob::Pattern::new(pattern).is_ok_and(|p| p.matches(name) || p.matches(leaf))
+                })
+        };
+        self.site.qualifiers.iter().find(|q| is(q) && here(&q.files)).map(|q| q.means)
+    }
+
+    /// The result's unit; a non-detect without one takes its limit's.
+    fn unit(
+        &self,
+        line: &Line,
+        row: &mut Row,
+        texts: &mut Texts,
+        told: &mut Vec<Told>,
+    ) -> Result<Unit, Fate> {
+        let units = &self.table.mapping.units;
+        let text = texts.text(row.written.unit).to_owned();
+        let column_basis = texts.code(self.table.cell(line, Column::Basis));
+        if text.is_empty() {
+            row.basis = column_basis;
+            let of = |column: &Column| units.get(column).copied();
+            return of(&Column::Result)
+                .or_else(|| of(&Column::ReportingLimit))
+                .or_else(|| of(&Column::DetectionLimit))
+                .ok_or(Fate::SetAside(SetAside::NoUnit));
+        }
+        let in_water = match text.to_ascii_lowercase().as_str() {
+            "ppb" if self.rule.ppb_in_water => Some(Unit::UG_PER_L),
+            "ppm" if self.rule.ppb_in_water => Some(Unit::MG_PER_L),
+            _ => None,
+        };
+        match (in_water, Unit::read(&text)) {
+            (Some(unit), _) => {
+                row.basis = column_basis;
+                Ok(unit)
+            }
+            (None, Some(read)) => {
+                row.basis = match read.basis {
+                    Some(basis) => texts.code(&basis),
+                    None => column_basis,
+                };
+                Ok(read.unit)
+            }
+            (None, None) => {
+                told.push(Told::UnknownUnit { written: text });
+                Err(Fate::SetAside(SetAside::UnknownUnit))
+            }
+        }
+    }
+
+    /// A positive limit in the result's unit; one that cannot be read is told and left out.
+    fn limit(
+        &self,
+        line: &Line,
+        column: Column,
+        unit: Unit,
+        told: &mut Vec<Told>,
+    ) -> Option<f64> {
+        let text = self.table.cell(line, column);
+        if text.is_empty() {
+            return None;
+        }
+        let own = self.table.mapping.units.get(&column).copied().unwrap_or(unit);
+        let read = number(text, self.table.numbers);
+        if read.is_none() {
+            told.push(Told::Unreadable {
+                column: column.key(),
+                found: text.to_owned(),
+                expected: Expected::Limit,
+            });
+        }
+        read.filter(|limit| *limit > 0.0).and_then(|limit| own.convert(limit, unit))
+    }
+
+    /// The first decision of a kind that names this record.
+    fn decided(
+        &self,
+        kind: DecisionKind,
+        row: &Row,
+        day: Option<NaiveDate>,
+        texts: &Texts,
+    ) -> Option<u16> {
+        let holds = |list: &[String], text: &str| list.is_empty() || list.iter().any(|x| x == text);
+        let place = self.site.decisions.iter().position(|decision| {
+            decision.kind == kind
+                && holds(&decision.wells, texts.text(row.well))
+                && holds(&decision.analytes, texts.text(row.analyte))
+                && holds(&decision.samples, texts.text(row.written.sample_id))
+                && decision.from.is_none_or(|from| day.is_some_and(|day| from <= day))
+                && decision.to.is_none_or(|to| day.is_some_and(|day| day <= to))
+                && decision.file.as_ref().is_none_or(|file| {
+                    self.table.name == *file || self.table.name.ends_with(&format!("/{file}"))
+                })
+                && (decision.records.is_empty() || decision.records.contains(&row.line))
+        })?;
+        u16::try_from(place).ok()
+    }
+}
+
+impl Marks {
+    fn add(&mut self, meaning: Meaning, code: &str, told: &mut Vec<Told>) {
+        let strictest = Strictest::of(meaning);
+        self.strictest = Some(self.strictest.map_or(strictest, |before| before.min(strictest)));
+        self.estimated |= matches!(meaning, Meaning::Estimated | Meaning::Blank);
+        if meaning == Meaning::Blank {
+            told.push(Told::InBlank);
+        }
+        if meaning == Meaning::Informational && code.eq_ignore_ascii_case("d") {
+            self.dilution = Dilution::Diluted;
+        }
+        if meaning == Meaning::AboveRange && code.eq_ignore_ascii_case("e") {
+            self.dilution = Dilution::OverCalibration;
+        }
+    }
+
+    fn hold(&mut self, strictest: Strictest, why: SetAside) {
+        self.strictest = Some(self.strictest.map_or(strictest, |before| before.min(strictest)));
+        self.unknown.get_or_insert(Fate::SetAside(why));
+    }
+}

@@ -1,0 +1,177 @@
+//! What is told once, grouped, with the records in the ledger's detail.
+//!
+//! Each case carries the figures its sentence needs; the sentence itself is in `words`.
+
+use crate::site::JoinedBy;
+
+/// Something about a record that a person should know although it was dealt with.
+#[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Told {
+    /// A file decoded as windows-1252; the first line with a byte outside ASCII.
+    DecodedWindows1252 {
+        /// The file.
+        file: String,
+        /// The line.
+        line: u64,
+    },
+    /// A header that could not be matched to any meaning; its cells are kept out.
+    ColumnNotUsed {
+        /// The file.
+        file: String,
+        /// The header.
+        column: String,
+    },
+    /// An analyte name joined to the listed one.
+    AnalyteJoined {
+        /// As written.
+        written: String,
+        /// The listed name.
+        listed: String,
+        /// How.
+        by: JoinedBy,
+    },
+    /// A CAS number whose check digit does not hold.
+    CasCheckDigit {
+        /// As written.
+        cas: String,
+    },
+    /// A well read under another name by an alias.
+    WellAlias {
+        /// As written.
+        written: String,
+        /// The site's name.
+        well: String,
+    },
+    /// A well that the site file does not list; used all the same.
+    WellNotListed {
+        /// The well.
+        well: String,
+    },
+    /// An analyte that is not listed, with the nearest listed name.
+    AnalyteNotListed {
+        /// As written.
+        written: String,
+        /// The nearest, if any.
+        nearest: Option<String>,
+    },
+    /// A result without a fraction joined to the listed one.
+    FractionAssumed {
+        /// The analyte.
+        analyte: String,
+        /// The listed fraction.
+        fraction: String,
+    },
+    /// A result without a fraction where none is listed: a series of its own.
+    FractionUnknown {
+        /// The analyte.
+        analyte: String,
+    },
+    /// The result's own limit and the reporting limit differ; the larger was taken.
+    LimitsDiffer,
+    /// The holding time was exceeded.
+    HoldingTime,
+    /// Found in a blank too.
+    InBlank,
+    /// A qualifier code that needs a legend.
+    UnknownQualifier {
+        /// The code.
+        code: String,
+    },
+    /// A detection condition that needs a legend.
+    UnknownCondition {
+        /// The words.
+        condition: String,
+    },
+    /// A sample type that is neither known nor mapped.
+    UnknownSampleType {
+        /// As written.
+        written: String,
+    },
+    /// A unit outside the closed list.
+    UnknownUnit {
+        /// As written.
+        written: String,
+    },
+    /// The order of day and month is neither declared nor proved.
+    AmbiguousDates {
+        /// The file.
+        file: String,
+    },
+    /// A later delivery revised this result.
+    Revised {
+        /// The earlier value as written.
+        was: String,
+        /// The later value as written.
+        is: String,
+        /// Where the later one stands, `file:line`.
+        place: String,
+    },
+    /// A non-detect's limit lies under a detect of the same date.
+    NonDetectUnderDetect,
+    /// A detect under its own reporting limit taken as a non-detect at it.
+    Recensored,
+    /// Non-detects of the series take their detection limit as their limit.
+    DetectionLimitTaken,
+    /// An activity under its minimum detectable level.
+    UnderDetectableActivity,
+    /// Averaged with other results of its date.
+    AveragedOf {
+        /// How many.
+        n: u32,
+    },
+    /// Outside the window of the fit.
+    OutsideFit,
+    /// A quality-control duplicate averaged in.
+    DuplicateAveraged,
+    /// Converted from another unit.
+    Converted {
+        /// From.
+        from: &'static str,
+        /// To.
+        to: &'static str,
+    },
+    /// The decision that touched the record.
+    Decision {
+        /// Its id.
+        id: String,
+    },
+    /// The text that could not be read, with its column.
+    Unreadable {
+        /// The column.
+        column: &'static str,
+        /// What stood there.
+        found: String,
+        /// What was expected, as a key of `words`.
+        expected: Expected,
+    },
+    /// A file without a table column that the open standard has for limits.
+    Plain {
+        /// A key of `words`.
+        key: &'static str,
+    },
+}
+
+/// What a cell should have held.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Expected {
+    /// A result: `0.5`, `<0.5`, `>2000`, `ND` with a limit.
+    Result,
+    /// A positive limit.
+    Limit,
+    /// A date: `2024-03-05`.
+    Date,
+}
+
+impl Told {
+    /// The case under which the note is counted; all but the revised results are their own group.
+    #[must_use]
+    pub fn group(&self) -> &Self {
+        self
+    }
+
+    /// Whether the note is said to people at all, or stands in the ledger's detail alone.
+    #[must_use]
+    pub fn is_said(&self) -> bool {
+        !matches!(self, Self::AveragedOf { .. } | Self::OutsideFit | Self::Decision { .. })
+    }
+}

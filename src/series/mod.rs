@@ -1,0 +1,23 @@
+//! Readings grouped by site, well, analyte, fraction and depth, merged to one value a date.
+//!
+//! [`points`] is the only way from a series to a fit: it applies the censoring point, the merge of
+//! one date, the window and the substitution setting, and says what became of every record.
+
+pub mod key;
+pub mod well_series;
+pub mod round;
+pub mod recensor;
+pub mod merge;
+pub mod points;
+pub mod pairs;
+pub mod window;
+pub mod grouping;
+pub mod assemble;
+
+pub use key::SeriesKey;
+pub use grouping::group;
+pub use window::window_for;
+pub use pairs::DuplicatePair;
+pub use points::{DateValue, MergeRules, Points, Window, points};
+pub use round::{Round, RoundRules};
+pub use well_series::{AppliedLimit, Candidate, SampleRole, WellSeries};

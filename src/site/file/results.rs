@@ -1,0 +1,47 @@
+//! `[[results]]` as written.
+
+use std::collections::BTreeMap;
+
+use super::super::delivery::{
+    Column, DateOrder, Decimal, Encoding, Layout, SampleType, SerialDates, Sigma,
+};
+use super::super::written::table::{Entry, Open, table, table_schema};
+use super::super::written::{At, FromToml, Header, Need, OneChar, Problems};
+
+table! {
+    /// How the results files that match a pattern are read. Blocks stand in order of delivery.
+    ResultsTable {
+        /// The files, as a pattern with / between folders, relative to the site folder.
+        files = "files": String, needed as "files = \"results/*.csv\"";
+        /// How the files are laid out. Default "long", the only one built so far.
+        layout = "layout": Layout;
+        /// Not built yet. The sheet of a workbook.
+        sheet = "sheet": String;
+        /// The encoding, where it should not be found out.
+        encoding = "encoding": Encoding;
+        /// The character between cells, where it should not be found out.
+        separator = "separator": OneChar;
+        /// The file's header for each of our columns: { result = "Conc.", well = "Bore" }.
+        columns = "columns": BTreeMap<Column, At<String>>;
+        /// The order of day and month, where the files do not prove it.
+        date_order = "date-order": DateOrder;
+        /// Whether years of two digits are read, 70 to 99 as 19xx and 00 to 69 as 20xx. Default
+        /// false.
+        two_digit_years = "two-digit-years": bool;
+        /// Whether bare numbers in the date column are spreadsheet serials, and of which
+        /// calendar. Default "no".
+        serial_dates = "serial-dates": SerialDates;
+        /// The decimal mark. Default "point".
+        decimal = "decimal": Decimal;
+        /// The mark between thousands.
+        thousands = "thousands": OneChar;
+        /// Whether ppb and ppm mean ug/L and mg/L of water. Default false.
+        ppb_in_water = "ppb-in-water": bool;
+        /// What the uncertainty column holds.
+        uncertainty = "uncertainty": Sigma;
+        /// The files' own words for sample types: { "7" = "duplicate" }.
+        sample_types = "sample-types": BTreeMap<String, At<SampleType>>;
+        /// Not built yet. To what stage the files were validated, and by whom.
+        validation = "validation": String;
+    }
+}

@@ -1,0 +1,184 @@
+//! What is told once, grouped: one sentence for the page and the notes, one detail for the ledger.
+
+use super::clean::shown;
+use super::number::counted;
+use crate::findings::Note;
+use crate::ledger::Told;
+use crate::ledger::told::Expected;
+use crate::site::JoinedBy;
+
+/// The keys of [`Told::Plain`] and their sentences.
+pub const PLAIN: &[(&str, &str)] = &[
+    (
+        "no-limit-columns",
+        "the file has no column for reporting or detection limits, so a non-detect is used only \
+         where its result is written as `<` and a number",
+    ),
+    ("condition-against-value", "the detection condition says not detected, yet a larger value is given"),
+    ("date-with-time", "the date carries a time, which is kept"),
+    ("cas-restored", "a CAS number that a spreadsheet had turned into a date was restored"),
+];
+
+/// One grouped line: `34 records: unit UG/L read as ug/L`.
+#[must_use]
+pub fn sentence(told: &Told, records: usize) -> String {
+    let text = detail(told);
+    match told {
+        Told::DecodedWindows1252 { .. } | Told::ColumnNotUsed { .. } => text,
+        _ if records == 0 => text,
+        _ => format!("{}: {text}", counted(records, "record", "records")),
+    }
+}
+
+/// The details of one record, joined as ledger.csv writes them.
+#[must_use]
+pub fn details<'a>(told: impl IntoIterator<Item = &'a Told>) -> String {
+    told.into_iter().map(detail).collect::<Vec<_>>().join("; ")
+}
+
+/// What was told about one record, without its count.
+#[must_use]
+pub fn detail(told: &Told) -> String {
+    match told {
+        Told::DecodedWindows1252 { file, line } => format!(
+            "{} is not UTF-8 and was read as windows-1252; the first line concerned is {line}",
+            shown(file)
+        ),
+        Told::ColumnNotUsed { file, column } => {
+            format!("{}: column `{}` has no known meaning and is not used", shown(file), shown(column))
+        }
+        Told::AnalyteJoined { written, listed, by } => {
+            let by = match by {
+                JoinedBy::Cas => "its CAS number",
+                JoinedBy::Name => "its name",
+                JoinedBy::Synonym => "another name in the catalogue",
+            };
+            format!("analyte `{}` read as {} by {by}", shown(written), shown(listed))
+        }
+        Told::CasCheckDigit { cas } => {
+            format!("CAS number {} fails its check digit; used as written", shown(cas))
+        }
+        Told::WellAlias { written, well } => {
+            format!("well `{}` read as {} by an alias", shown(written), shown(well))
+        }
+        Told::WellNotListed { well } => {
+            format!("well {} is not in the site file; used all the same", shown(well))
+        }
+        Told::AnalyteNotListed { written, nearest } => {
+            let hint = nearest
+                .as_deref()
+                .map_or_else(String::new, |n| format!("; the nearest listed is {}", shown(n)));
+            format!("analyte `{}` is not listed{hint}", shown(written))
+        }
+        Told::FractionAssumed { analyte, fraction } => format!(
+            "{} without a fraction, taken as the listed one, {}",
+            shown(analyte),
+            shown(fraction)
+        ),
+        Told::FractionUnknown { analyte } => format!(
+            "{} without a fraction, and none is listed: a series of its own",
+            shown(analyte)
+        ),
+        Told::UnknownQualifier { code } => format!("qualifier `{}` has no declared meaning", shown(code)),
+        Told::UnknownCondition { condition } => {
+            format!("detection condition `{}` has no declared meaning", shown(condition))
+        }
+        Told::UnknownSampleType { written } => {
+            format!("sample type `{}` is neither known nor mapped", shown(written))
+        }
+        Told::UnknownUnit { written } => format!("unit `{}` is not known", shown(written)),
+        Told::AmbiguousDates { file } => format!(
+            "{}: day and month could be either way round; `date-order` under [[results]] settles it",
+            shown(file)
+        ),
+        Told::Revised { was, is, place } => format!(
+            "{} revised to {} by {}; the later one counts",
+            shown(was),
+            shown(is),
+            shown(place)
+        ),
+        Told::Converted { from, to } => format!("converted from {from} to {to}"),
+        Told::Decision { id } => format!("decision {}", shown(id)),
+        Told::Unreadable { column, found, expected } => {
+            format!("{column}: found `{}`, expected {}", shown(found), expectation(*expected))
+        }
+        Told::Plain { key } => plain(key).to_owned(),
+        Told::LimitsDiffer => {
+            "the non-detect's result and its reporting limit differ; the larger is its limit".into()
+        }
+        Told::HoldingTime => "the holding time was exceeded; used".into(),
+        Told::InBlank => "also found in a blank; used as estimated".into(),
+        Told::NonDetectUnderDetect => {
+            "a non-detect whose limit lies under a detect of the same date; the detect counts".into()
+        }
+        Told::Recensored => {
+            "a detect under its own reporting limit, taken as a non-detect at that limit".into()
+        }
+        Told::DetectionLimitTaken => "the detection limit is the limit of this non-detect".into(),
+        Told::UnderDetectableActivity => {
+            "an activity under its detectable level, taken as a non-detect at that level".into()
+        }
+        // The ledger's own words for these three (rules, section 1).
+        Told::AveragedOf { n } => format!("averaged of {n}"),
+        Told::OutsideFit => "outside-fit".into(),
+        Told::DuplicateAveraged => "averaged".into(),
+    }
+}
+
+/// The sentence of a plain note; an unknown key stands for itself.
+fn plain(key: &'static str) -> &'static str {
+    PLAIN.iter().find(|(known, _)| *known == key).map_or(key, |(_, sentence)| sentence)
+}
+
+/// What a cell should have held.
+fn expectation(expected: Expected) -> &'static str {
+    match expected {
+        Expected::Result => "a result such as 0.5, <0.5, >2000, or ND with a limit in its own column",
+        Expected::Limit => "a positive number",
+        Expected::Date => "a date such as 2024-03-05",
+    }
+}
+
+/// How much a note matters: 0 for what was read as meant, 3 for records that were lost.
+#[must_use]
+pub fn weight(told: &Told) -> u8 {
+    match told {
+        Told::AveragedOf { .. }
+        | Told::OutsideFit
+        | Told::Decision { .. }
+        | Told::Converted { .. }
+        | Told::DuplicateAveraged
+        | Told::AnalyteJoined { .. }
+        | Told::WellAlias { .. }
+        | Told::LimitsDiffer
+        | Told::Plain { .. } => 0,
+        Told::CasCheckDigit { .. }
+        | Told::WellNotListed { .. }
+        | Told::FractionAssumed { .. }
+        | Told::HoldingTime
+        | Told::UnderDetectableActivity
+        | Told::DetectionLimitTaken
+        | Told::ColumnNotUsed { .. } => 1,
+        Told::DecodedWindows1252 { .. }
+        | Told::FractionUnknown { .. }
+        | Told::InBlank
+        | Told::NonDetectUnderDetect
+        | Told::Recensored
+        | Told::Revised { .. } => 2,
+        Told::AnalyteNotListed { .. }
+        | Told::UnknownQualifier { .. }
+        | Told::UnknownCondition { .. }
+        | Told::UnknownSampleType { .. }
+        | Told::UnknownUnit { .. }
+        | Told::AmbiguousDates { .. }
+        | Told::Unreadable { .. } => 3,
+    }
+}
+
+/// Sorts notes as people read them: the most important last, then by number of records, then by
+/// what was told.
+pub fn sort_notes(notes: &mut [Note]) {
+    notes.sort_by(|a, b| {
+        (weight(&a.told), a.records).cmp(&(weight(&b.told), b.records)).then(a.told.cmp(&b.told))
+    });
+}
