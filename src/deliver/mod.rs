@@ -13,8 +13,10 @@ pub mod charts;
 pub mod files;
 pub mod earlier_run;
 pub mod write;
+pub mod new_site;
 
 pub use files::{Content, Formats, OutFile, review_files};
+pub use new_site::{NewSiteError, new_site};
 pub use page_json::{check_json, explain_json, show_json};
 pub use run_json::run_json;
 pub use summary_json::summary_json;

@@ -2,6 +2,7 @@
 
 use chrono::NaiveDate;
 
+pub use crate::terms::BandPoint;
 use crate::series::SeriesKey;
 use crate::site::Role;
 use crate::terms::{Flag, Method, Pace, PerYear, Reading, Span, Unit, Verdict, WhyNoDate, WhyNoRate};
@@ -145,19 +146,6 @@ pub struct Fitted {
     pub used: Span,
     /// The line and its band, dates ascending; beyond `used.last` it is a projection.
     pub band: Vec<BandPoint>,
-}
-
-/// The fitted median and its interval on one date.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct BandPoint {
-    /// The date.
-    pub date: NaiveDate,
-    /// The fitted median.
-    pub median: f64,
-    /// Its lower end.
-    pub low: f64,
-    /// Its upper end.
-    pub high: f64,
 }
 
 /// A duplicate pair as tables list it.

@@ -2,6 +2,7 @@
 
 use encoding_rs::{UTF_16BE, UTF_16LE, WINDOWS_1252};
 
+use crate::ledger::NotText;
 use crate::site::Encoding;
 
 /// A decoded file.
@@ -13,23 +14,6 @@ pub struct Decoded {
     pub encoding: &'static str,
     /// For windows-1252 that was not declared: the first line with a byte outside ASCII.
     pub guessed_at_line: Option<u64>,
-}
-
-/// Why bytes are no text.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum NotText {
-    /// Nothing in the file.
-    Empty,
-    /// A NUL byte: a binary file, or UTF-16 without its mark.
-    Binary {
-        /// Where the first NUL stands.
-        byte: usize,
-    },
-    /// The declared encoding does not fit the bytes.
-    Malformed {
-        /// The declared encoding.
-        declared: &'static str,
-    },
 }
 
 /// Decodes a results file.

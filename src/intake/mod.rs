@@ -26,6 +26,5 @@ pub mod frame;
 pub mod tidy;
 pub mod account;
 
-pub use source::{Found, SourceError, Sources};
-pub use table::{TableProblem, Unreadable};
+pub use source::{Found, Sources};
 pub use tidy::{Tidy, tidy};

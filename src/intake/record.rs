@@ -46,6 +46,7 @@ struct Marks {
     estimated: bool,
     dilution: Dilution,
     unknown: Option<Fate>,
+    decided_by: Option<u16>,
 }
 
 impl RecordReader<'_> {
@@ -81,6 +82,7 @@ impl RecordReader<'_> {
             kind: Kind::Other,
             dilution: Dilution::None,
             excluded_by: None,
+            qualified_by: None,
         };
         row.excluded_by = self.decided(DecisionKind::Exclude, &row, day, texts);
         let kind = self.kind(line, texts.text(written.result), &mut told);
@@ -187,6 +189,7 @@ impl RecordReader<'_> {
         let marks = self.marks(line, row, day, texts, told)?;
         row.estimated = marks.estimated;
         row.dilution = marks.dilution;
+        row.qualified_by = marks.decided_by;
         let cell = result_cell(texts.text(row.written.result), self.table.numbers);
         if cell == ResultCell::Unreadable {
             let found = texts.text(row.written.result).to_owned();
@@ -235,14 +238,20 @@ impl RecordReader<'_> {
         told: &mut Vec<Told>,
     ) -> Result<Marks, Fate> {
         let mut marks =
-            Marks { strictest: None, estimated: false, dilution: Dilution::None, unknown: None };
+            Marks {
+                strictest: None,
+                estimated: false,
+                dilution: Dilution::None,
+                unknown: None,
+                decided_by: None,
+            };
         let status = self.table.cell(line, Column::Status);
         if status.eq_ignore_ascii_case("rejected") {
             return Err(Fate::SetAside(SetAside::Rejected));
         }
-        let decided = self
-            .decided(DecisionKind::UseQualifier, row, day, texts)
-            .and_then(|place| self.site.decisions[usize::from(place)].means);
+        let decided = self.decided(DecisionKind::UseQualifier, row, day, texts).and_then(|place| {
+            Some((place, self.site.decisions[usize::from(place)].means?))
+        });
         let qualifier = texts.text(row.written.qualifier);
         for code in codes(qualifier) {
             let legend = self.legend(|q| q.code.as_deref() == Some(code));
@@ -254,7 +263,13 @@ impl RecordReader<'_> {
                 }
                 QualifierCode::HoldingTime => told.push(Told::HoldingTime),
                 QualifierCode::NeedsLegend => match decided {
-                    Some(meaning) => marks.add(meaning, code, told),
+                    Some((place, meaning)) => {
+                        marks.add(meaning, code, told);
+                        marks.decided_by = Some(place);
+                        told.push(Told::Decision {
+                            id: self.site.decisions[usize::from(place)].id.clone(),
+                        });
+                    }
                     None => {
                         told.push(Told::UnknownQualifier { code: code.to_owned() });
                         marks.hold(Strictest::Unknown, SetAside::QualifierNeedsLegend);

@@ -95,4 +95,6 @@ pub struct Row {
     pub dilution: Dilution,
     /// The decision that excludes it.
     pub excluded_by: Option<u16>,
+    /// The decision that says what its qualifiers mean.
+    pub qualified_by: Option<u16>,
 }

@@ -4,6 +4,7 @@ use std::path::{Path, PathBuf};
 
 use sha2::{Digest, Sha256};
 
+use crate::ledger::SourceError;
 use crate::site::{ResultsRule, Site};
 
 /// Where results come from.
@@ -28,40 +29,6 @@ pub struct Found {
     pub sha256: String,
     /// The place of its rule among the site's; the number of rules where none matches.
     pub rule: usize,
-}
-
-/// A file that was not read.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub enum SourceError {
-    /// The file or folder cannot be read.
-    Io {
-        /// The shown path.
-        name: String,
-        /// What the system says.
-        why: String,
-    },
-    /// The bytes are those of another file of this run.
-    GivenTwice {
-        /// The shown path.
-        name: String,
-        /// The other's shown path.
-        same_as: String,
-    },
-    /// A workbook or another kind of file that is not read.
-    OtherKind {
-        /// The shown path.
-        name: String,
-    },
-}
-
-impl SourceError {
-    /// The shown path.
-    #[must_use]
-    pub fn name(&self) -> &str {
-        match self {
-            Self::Io { name, .. } | Self::GivenTwice { name, .. } | Self::OtherKind { name } => name,
-        }
-    }
 }
 
 /// What was found.
@@ -131,8 +98,14 @@ pub fn collect(sources: &Sources, site: &Site) -> Collected {
 }
 
 fn found(name: String, bytes: Vec<u8>, rule: usize) -> Found {
-    let sha256 = hex(&Sha256::digest(&bytes));
+    let sha256 = sha256_hex(&bytes);
     Found { name, bytes, sha256, rule }
+}
+
+/// SHA-256 of bytes, in hex.
+#[must_use]
+pub fn sha256_hex(bytes: &[u8]) -> String {
+    hex(&Sha256::digest(bytes))
 }
 
 /// Bytes in lower-case hexadecimal.

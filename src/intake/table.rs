@@ -4,11 +4,12 @@ use csv::StringRecord;
 
 use super::date::DateForm;
 use super::date_order::proved;
-use super::decode::{NotText, decode};
+use super::decode::decode;
 use super::header::{Mapping, mapping};
 use super::number::NumberForm;
-use super::source::{Found, SourceError};
+use super::source::Found;
 use super::split::{Line, Lines, split};
+use crate::ledger::TableProblem;
 use crate::site::{Column, ResultsRule};
 
 /// A results file, ready to be read record by record.
@@ -32,49 +33,6 @@ pub struct Table {
     pub dates: DateForm,
     /// How numbers are written.
     pub numbers: NumberForm,
-}
-
-/// Why a file is no results table.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub enum TableProblem {
-    /// It could not be opened, came twice, or is of a kind that is not read.
-    Source(SourceError),
-    /// Its bytes are no text.
-    NotText(NotText),
-    /// The first line lacks required columns.
-    NoHeader {
-        /// The required columns that were not found.
-        lacks: Vec<Column>,
-        /// The cells of the first line.
-        found: Vec<String>,
-    },
-    /// Headers that the site file declares are not there.
-    DeclaredMissing {
-        /// Our column and the declared header.
-        missing: Vec<(Column, String)>,
-        /// The cells of the first line.
-        found: Vec<String>,
-    },
-    /// Two columns of one meaning differ.
-    ColumnsDiffer {
-        /// The meaning.
-        column: Column,
-        /// Their headers.
-        headers: [String; 2],
-        /// The first line where they differ.
-        line: u64,
-        /// What stands there.
-        cells: [String; 2],
-    },
-}
-
-/// A file that could not be read as a table.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub struct Unreadable {
-    /// The shown path.
-    pub name: String,
-    /// Why.
-    pub problem: TableProblem,
 }
 
 /// Reads a file as a table by its rule.

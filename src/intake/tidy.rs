@@ -7,10 +7,11 @@ use super::frame::frame;
 use super::names::{Names, unite_spellings};
 use super::record::RecordReader;
 use super::repeats;
+use super::rows::Row;
 use super::source::{Collected, Sources, collect};
-use super::table::{Table, TableProblem, Unreadable, table};
+use super::table::{Table, table};
 use super::texts::Texts;
-use crate::ledger::{FileFacts, Ledger, MappingFacts, Told};
+use crate::ledger::{FileFacts, Ledger, MappingFacts, TableProblem, Told, Unreadable};
 use crate::site::{ResultsRule, Site};
 
 /// Every record of every file in canonical columns and units, with its provisional fate.
@@ -99,7 +100,10 @@ pub fn tidy(
     repeats::settle(&rows, &mut ledger, &texts, &file_names);
     let decided = (0..site.decisions.len())
         .map(|place| {
-            rows.iter().filter(|row| row.excluded_by.map(usize::from) == Some(place)).count()
+            let by = |row: &&Row| {
+                [row.excluded_by, row.qualified_by].into_iter().flatten().any(|by| usize::from(by) == place)
+            };
+            rows.iter().filter(by).count()
         })
         .collect();
     let frame = frame(&rows)?;

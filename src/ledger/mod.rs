@@ -7,10 +7,12 @@
 pub mod account;
 pub mod fate;
 pub mod told;
+pub mod unreadable;
 
 pub use account::{FileFacts, LedgerRow, MappingFacts, OutcomeCount};
 pub use fate::{Fate, Merged, NonResult, Outcome, QualityControl, SetAside, UsedAs};
 pub use told::Told;
+pub use unreadable::{NotText, SourceError, TableProblem, Unreadable};
 
 /// One record's number in the run: files in delivery order, records in file order, from 0.
 pub type RecordId = u32;

@@ -144,10 +144,22 @@ pub enum Told {
         /// What was expected, as a key of `words`.
         expected: Expected,
     },
-    /// A file without a table column that the open standard has for limits.
-    Plain {
-        /// A key of `words`.
-        key: &'static str,
+    /// A file in the results folder that is no results file.
+    FileLeftAlone {
+        /// The file.
+        file: String,
+    },
+    /// A file with a header and nothing below it.
+    FileWithoutRecords {
+        /// The file.
+        file: String,
+    },
+    /// A statistical setting that is not at its default.
+    SettingOffDefault {
+        /// The key.
+        key: String,
+        /// What it is.
+        is: String,
     },
 }
 

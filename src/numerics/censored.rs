@@ -1,10 +1,11 @@
 //! The line through values some of which are only bounds, with profile-likelihood intervals.
 
 use super::ends::Profile;
-use super::likelihood::{Likelihood, Parameters};
+use super::likelihood::Likelihood;
 use super::normal;
 use super::peak::{NoPeak, Peak, climb};
 use super::points::{Mark, Points};
+use super::scaling::Parameters;
 use super::tails;
 use super::target::{Spread, Target};
 
@@ -12,13 +13,14 @@ use super::target::{Spread, Target};
 /// next to nothing. Source: ruled for this program; simulated coverage in methods note 3.4.
 pub const UNINFORMATIVE: f64 = 0.99;
 
-/// The likelihood is scaled anew where the scale found is more than this factor from the guessed
-/// one (a pure number). Source: keeps the moments of measured values good to ten digits.
-const RESCALE: f64 = 1e3;
+/// The likelihood is scaled anew about the line found where its scale is more than this factor from
+/// the guessed one (a pure number). Source: rounding of the moments of measured values grows with
+/// the square of the factor; a limit far above everything makes a poor guess.
+const WELL_SCALED: f64 = 10.0;
 
-/// Rescalings, at most (a count). Source: each brings the scale within the factor of Newton's
-/// reach; detects all but exactly on a line need three.
-const MOST_RESCALINGS: usize = 8;
+/// Rescalings of the likelihood, at most (a count). Source: each follows the scale by a factor of
+/// a thousand; detects that miss a line by 1e-10 need four.
+const MOST_RESCALINGS: usize = 12;
 
 /// A line fitted by the likelihood of values and bounds.
 #[derive(Clone, Debug, PartialEq)]
@@ -29,6 +31,14 @@ pub struct CensoredLine {
     pub(super) effective: f64,
     uninformative: usize,
     pub(super) flat_fall: f64,
+    steps: usize,
+}
+
+/// The search for the maximum did not end.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct NotFitted {
+    /// Steps taken.
+    pub steps: usize,
 }
 
 /// Large-sample (Wald) variances of a fitted line, in the caller's units.
@@ -59,8 +69,8 @@ impl CensoredLine {
     /// `t` in years, `y` in ln(concentration).
     ///
     /// # Limits
-    /// Meant for measured values on three or more dates and not on a line, see
-    /// [`super::first_order`]; all values measured is allowed.
+    /// Meant for measured values on three or more dates and not on a line, as the first-order fit
+    /// sees to; all values measured is allowed.
     ///
     /// # Errors
     /// The number of steps, where the search did not end.
@@ -68,20 +78,38 @@ impl CensoredLine {
     /// # Reference
     /// Tobin (1958); Olsen (1978) [from memory]. Worked example W14, R `survreg` on `tobin`, 916
     /// real series.
-    pub fn fit(points: Points<'_>) -> Result<CensoredLine, NoPeak> {
-        let mut likelihood = Likelihood::new(points).ok_or(NoPeak { steps: 0 })?;
-        let guess = likelihood.guessed();
-        let mut peak = climb(&likelihood, likelihood.olsen(guess))?;
+    pub fn fit(points: Points<'_>) -> Result<CensoredLine, NotFitted> {
+        let mut likelihood = Likelihood::new(points).ok_or(NotFitted { steps: 0 })?;
+        let mut near = likelihood.scaling().guessed_line();
+        let mut taken = 0;
+        let mut reached = None;
         for _ in 0..MOST_RESCALINGS {
-            if (1.0 / RESCALE..=RESCALE).contains(&peak.at.a) {
-                break;
+            match climb(&likelihood, likelihood.scaling().olsen(near)) {
+                Ok(peak) => {
+                    taken += peak.steps;
+                    if (1.0 / WELL_SCALED..=WELL_SCALED).contains(&peak.at.a) {
+                        reached = Some(peak);
+                        break;
+                    }
+                    near = likelihood.scaling().line(peak.at);
+                    likelihood = Likelihood::about(points, near);
+                }
+                Err(NoPeak::OutOfScale { at, steps }) => {
+                    taken += steps;
+                    near = likelihood.scaling().line(at);
+                    likelihood = Likelihood::about(points, near);
+                }
+                Err(NoPeak::NotReached { steps }) => {
+                    return Err(NotFitted {
+                        steps: taken + steps,
+                    });
+                }
             }
-            let nearer = likelihood.parameters(peak.at);
-            likelihood = Likelihood::about(points, nearer);
-            peak = climb(&likelihood, likelihood.olsen(nearer))?;
         }
-        let spread = Spread::at(&peak).ok_or(NoPeak { steps: peak.steps })?;
-        let line = likelihood.parameters(peak.at);
+        let not_fitted = NotFitted { steps: taken };
+        let peak = reached.ok_or(not_fitted)?;
+        let spread = Spread::at(&peak).ok_or(not_fitted)?;
+        let line = likelihood.scaling().line(peak.at);
         let (mut effective, mut uninformative) = (0.0, 0);
         for point in points.iter() {
             let z = (point.y - line.intercept - line.slope * point.t) / line.scale;
@@ -99,12 +127,13 @@ impl CensoredLine {
             effective,
             uninformative,
             flat_fall: f64::INFINITY,
+            steps: taken,
         };
         let scaling = fitted.likelihood.scaling();
         let flat = fitted
             .profile()
             .held_at(Target::Slope, -scaling.scaled_base_slope());
-        fitted.flat_fall = flat.ok_or(NoPeak { steps: peak.steps })?.fall;
+        fitted.flat_fall = flat.ok_or(not_fitted)?.fall;
         Ok(fitted)
     }
 
@@ -119,7 +148,7 @@ impl CensoredLine {
 
     /// The fitted line.
     pub fn parameters(&self) -> Parameters {
-        self.likelihood.parameters(self.peak.at)
+        self.likelihood.scaling().line(self.peak.at)
     }
 
     /// The log-likelihood at the fit.
@@ -149,7 +178,7 @@ impl CensoredLine {
 
     /// Newton steps of the fit.
     pub fn steps(&self) -> usize {
-        self.peak.steps
+        self.steps
     }
 
     /// Large-sample variances by the delta method.

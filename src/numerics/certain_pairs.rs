@@ -70,8 +70,18 @@ pub fn certain_pairs(points: Points<'_>) -> Option<CertainPairs> {
     let variance = values.skew() * times.skew() / (n * (n - 1.0) * (n - 2.0))
         + (values.squares as f64) * (times.squares as f64) / (2.0 * n * (n - 1.0));
     let s = twice_s / 2;
-    let z = if variance > 0.0 { (s - s.signum()) as f64 / variance.sqrt() } else { 0.0 };
-    Some(CertainPairs { s, undecided, variance, z, p: 2.0 * normal::upper(z.abs()) })
+    let z = if variance > 0.0 {
+        (s - s.signum()) as f64 / variance.sqrt()
+    } else {
+        0.0
+    };
+    Some(CertainPairs {
+        s,
+        undecided,
+        variance,
+        z,
+        p: normal::two_sided(z),
+    })
 }
 
 /// Sums over one matrix of scores.
@@ -92,9 +102,7 @@ impl Scores {
 /// 1 where the other value is surely over the one, −1 where surely under, 0 where neither.
 fn order(one: &Point, other: &Point) -> i64 {
     match (one.mark, other.mark) {
-        (Mark::Measured, Mark::Measured) => {
-            i64::from(other.y > one.y) - i64::from(other.y < one.y)
-        }
+        (Mark::Measured, Mark::Measured) => i64::from(other.y > one.y) - i64::from(other.y < one.y),
         (Mark::Below, Mark::Measured | Mark::Above) => i64::from(other.y >= one.y),
         (Mark::Measured | Mark::Above, Mark::Below) => -i64::from(one.y >= other.y),
         (Mark::Measured, Mark::Above) => i64::from(other.y >= one.y),

@@ -73,7 +73,13 @@ pub fn deletion_diagnostics(t: &[f64], y: &[f64]) -> Option<Vec<Deletion>> {
         let residual = y - through.fitted(t);
         let free = 1.0 - leverage;
         if leverage > WHOLE_LEVERAGE {
-            return Deletion { residual, leverage, standardized: None, studentized: None, cook: None };
+            return Deletion {
+                residual,
+                leverage,
+                standardized: None,
+                studentized: None,
+                cook: None,
+            };
         }
         let standardized = residual / (variance * free).sqrt();
         let rest = through.rss - residual * residual / free;
@@ -127,6 +133,10 @@ pub fn farthest(points: &[Deletion]) -> Option<Farthest> {
         } else {
             0.0
         };
-        Farthest { index, studentized, bonferroni_p: (n * one).min(1.0) }
+        Farthest {
+            index,
+            studentized,
+            bonferroni_p: (n * one).min(1.0),
+        }
     })
 }

@@ -1,19 +1,12 @@
 //! The first-order line: ln(concentration) falling or rising evenly with time.
 
 use super::censored::CensoredLine;
+use super::existence::measured_line;
 use super::interval::{Crossing, Interval};
-use super::line::{Line, line};
+use super::line::Line;
 use super::normal::HALF_LN_TWO_PI;
 use super::points::{Mark, NoLine, Points};
 use super::tails;
-
-/// Measured values lie on a line where their residual sum of squares is under this share of
-/// 1 + Σy². Source: ruled for this program; about 1e-10 of a value, far under any rounding of data.
-const ON_A_LINE: f64 = 1e-20;
-
-/// Distinct dates with measured values that a line and its scatter need. Source: two unknowns and
-/// a scatter; with fewer the likelihood has no maximum.
-const DATES_NEEDED: usize = 3;
 
 /// How a line was fitted.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -90,31 +83,8 @@ enum State {
 /// Draper & Smith (1998), ch. 1; Tobin (1958); Olsen (1978) [from memory]. NIST "Norris", worked
 /// examples W02 and W14, R `survreg` on `tobin`, 916 real series.
 pub fn first_order(points: Points<'_>) -> Result<FirstOrder, NoLine> {
-    let measured: Vec<_> = points
-        .iter()
-        .filter(|point| point.mark == Mark::Measured)
-        .collect();
-    let dates = distinct(points.t().iter().copied());
-    let measured_dates = distinct(measured.iter().map(|point| point.t));
-    if points.len() >= DATES_NEEDED && (dates == 1 || measured.len() >= 3 && measured_dates == 1) {
-        return Err(NoLine::OneDate);
-    }
-    if dates < DATES_NEEDED {
-        return Err(NoLine::TooFewDates { dates });
-    }
-    if measured_dates < DATES_NEEDED {
-        return Err(NoLine::TooFewDetects {
-            dates: measured_dates,
-        });
-    }
-    let t: Vec<f64> = measured.iter().map(|point| point.t).collect();
-    let y: Vec<f64> = measured.iter().map(|point| point.y).collect();
-    let through = line(&t, &y).ok_or(NoLine::NotConverged { steps: 0 })?;
-    let square = ON_A_LINE * (1.0 + y.iter().map(|y| y * y).sum::<f64>());
-    if through.rss < square && !contradicted(points, &through, square) {
-        return Err(NoLine::OnALine);
-    }
-    if measured.len() == points.len() {
+    let through = measured_line(points)?;
+    if points.all_measured() {
         Ok(FirstOrder::least_squares(through))
     } else {
         let fitted = CensoredLine::fit(points).map_err(|no_peak| NoLine::NotConverged {
@@ -122,34 +92,6 @@ pub fn first_order(points: Points<'_>) -> Result<FirstOrder, NoLine> {
         })?;
         Ok(FirstOrder::likelihood(points, fitted))
     }
-}
-
-/// Number of distinct values, counted no further than three.
-fn distinct(values: impl Iterator<Item = f64>) -> usize {
-    let mut seen = [f64::NAN; DATES_NEEDED];
-    let mut found = 0;
-    for value in values {
-        if !seen[..found].contains(&value) {
-            seen[found] = value;
-            found += 1;
-            if found == DATES_NEEDED {
-                break;
-            }
-        }
-    }
-    found
-}
-
-/// Whether a bound lies on the wrong side of the line by more than rounding.
-fn contradicted(points: Points<'_>, through: &Line, square: f64) -> bool {
-    points.iter().any(|point| {
-        let over = point.y - through.fitted(point.t);
-        match point.mark {
-            Mark::Measured => false,
-            Mark::Below => over < 0.0 && over * over >= square,
-            Mark::Above => over > 0.0 && over * over >= square,
-        }
-    })
 }
 
 impl FirstOrder {

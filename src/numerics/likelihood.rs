@@ -7,70 +7,11 @@
 use super::line::{Line, line, mean};
 use super::normal::{HALF_LN_TWO_PI, lower_tail};
 use super::points::{Mark, Points};
+use super::scaling::{Olsen, Parameters, Scaling};
 
 /// How far a bound is moved into its own side for the first guess at a line (in ln): ½ ln 2, the
 /// limit over √2. Source: methods note 3.2; it only starts the search and decides no result.
 const GUESS_SHIFT: f64 = 0.5 * std::f64::consts::LN_2;
-
-/// A line with a normal scatter, in the caller's units.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Parameters {
-    /// Value of the line at time 0.
-    pub intercept: f64,
-    /// Its change per unit of time.
-    pub slope: f64,
-    /// Standard deviation of values about it.
-    pub scale: f64,
-}
-
-/// How times and values are brought to order one: the values as residuals about a guessed line.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Scaling {
-    /// Time that becomes 0.
-    pub t_centre: f64,
-    /// Length of time that becomes 1.
-    pub t_unit: f64,
-    /// Value of the guessed line at the centre.
-    pub base: f64,
-    /// Slope of the guessed line.
-    pub base_slope: f64,
-    /// Difference in value that becomes 1.
-    pub y_unit: f64,
-}
-
-impl Scaling {
-    /// The scaled time.
-    pub fn u(&self, t: f64) -> f64 {
-        (t - self.t_centre) / self.t_unit
-    }
-
-    /// The guessed line at time `t`.
-    pub fn guessed(&self, t: f64) -> f64 {
-        self.base + self.base_slope * (t - self.t_centre)
-    }
-
-    /// The scaled residual.
-    pub fn w(&self, t: f64, y: f64) -> f64 {
-        (y - self.guessed(t)) / self.y_unit
-    }
-
-    /// Slope of the guessed line in scaled values per scaled time.
-    pub fn scaled_base_slope(&self) -> f64 {
-        self.base_slope * self.t_unit / self.y_unit
-    }
-}
-
-/// Olsen's parameters in scaled units: a point at (u, w) lies `z = a·w + b·u + c` standard
-/// deviations over the line. `a` is one over the scale.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Olsen {
-    /// Factor of the scaled value; over zero.
-    pub a: f64,
-    /// Factor of the scaled time.
-    pub b: f64,
-    /// The constant.
-    pub c: f64,
-}
 
 /// The log-likelihood at one place, with its first and second derivatives in Olsen's parameters.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -167,44 +108,9 @@ impl Likelihood {
         }
     }
 
-    /// The guessed line that the values are scaled about.
-    pub fn guessed(&self) -> Parameters {
-        let s = self.scaling;
-        Parameters {
-            intercept: s.base - s.base_slope * s.t_centre,
-            slope: s.base_slope,
-            scale: s.y_unit,
-        }
-    }
-
     /// How times and values are scaled.
     pub fn scaling(&self) -> Scaling {
         self.scaling
-    }
-
-    /// Olsen's parameters of a line given in the caller's units.
-    pub fn olsen(&self, line: Parameters) -> Olsen {
-        let s = self.scaling;
-        let a = s.y_unit / line.scale;
-        let level = (line.intercept + line.slope * s.t_centre - s.base) / s.y_unit;
-        let tilt = (line.slope - s.base_slope) * s.t_unit / s.y_unit;
-        Olsen {
-            a,
-            b: -a * tilt,
-            c: -a * level,
-        }
-    }
-
-    /// The line in the caller's units that has these Olsen's parameters.
-    pub fn parameters(&self, at: Olsen) -> Parameters {
-        let s = self.scaling;
-        let slope = s.base_slope - at.b / at.a * s.y_unit / s.t_unit;
-        let level = s.base - at.c / at.a * s.y_unit;
-        Parameters {
-            intercept: level - slope * s.t_centre,
-            slope,
-            scale: s.y_unit / at.a,
-        }
     }
 
     /// What has to be added to a log-likelihood of scaled values to get that of the values.
@@ -231,7 +137,7 @@ impl Likelihood {
     /// Tobin (1958), Econometrica 26:24–36. Worked example W14.
     pub fn log_likelihood(&self, line: Parameters) -> f64 {
         if line.scale > 0.0 {
-            self.pass(self.olsen(line)).value + self.offset()
+            self.pass(self.scaling.olsen(line)).value + self.offset()
         } else {
             f64::NEG_INFINITY
         }

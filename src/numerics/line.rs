@@ -73,7 +73,7 @@ pub fn line(t: &[f64], y: &[f64]) -> Option<Line> {
         rss,
         tss,
     };
-    (slope.is_finite() && rss.is_finite()).then_some(line)
+    (slope.is_finite() && rss.is_finite() && tss.is_finite()).then_some(line)
 }
 
 /// The arithmetic mean, corrected once for the rounding of its own sum.
@@ -91,7 +91,7 @@ pub fn line(t: &[f64], y: &[f64]) -> Option<Line> {
 ///
 /// # Reference
 /// Chan, Golub & LeVeque (1983), Am. Stat. 37:242–247 [from memory]. Checked against NIST's
-/// univariate sets: `tests/reference/nist-univariate.json`.
+/// univariate sets: `tests/reference/nist-univariate.csv`.
 pub fn mean(values: &[f64]) -> f64 {
     let n = values.len() as f64;
     let rough = values.iter().sum::<f64>() / n;

@@ -16,8 +16,8 @@
 /// Independent or positively dependent tests.
 ///
 /// # Reference
-/// Benjamini & Hochberg (1995), J. R. Stat. Soc. B 57:289–300. Checked against
-/// `tests/reference/adjusted-p.csv`.
+/// Benjamini & Hochberg (1995), J. R. Stat. Soc. B 57:289–300. Checked against the definition by
+/// looking at every j.
 pub fn benjamini_hochberg(p: &[f64]) -> Vec<f64> {
     let mut order: Vec<usize> = (0..p.len()).collect();
     order.sort_by(|&i, &j| p[i].total_cmp(&p[j]));

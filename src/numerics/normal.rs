@@ -24,7 +24,7 @@ const MILLS: [f64; 26] = [
     -0.007_503_282_826_693_918,
     -0.001_999_961_974_984_366,
     0.001_365_859_209_063_712_4,
-    -0.000_148_833_052_323_397_98,
+    -0.000_148_833_052_323_398,
     -0.000_124_735_896_168_795_83,
     4.181_458_586_632_463e-5,
     9.975_548_949_125_13e-6,
@@ -137,6 +137,25 @@ pub fn upper(z: f64) -> f64 {
 /// Abramowitz & Stegun (1964), 26.2.5.
 pub fn lower(z: f64) -> f64 {
     upper(-z)
+}
+
+/// Probability that a standard normal variable is as far from zero as `z` or farther.
+///
+/// # Formula
+/// ```text
+/// p = 2·(1 − Φ(|z|))
+/// ```
+///
+/// # Units
+/// `z` in standard deviations; the answer is a probability.
+///
+/// # Limits
+/// As [`upper`].
+///
+/// # Reference
+/// As [`upper`].
+pub fn two_sided(z: f64) -> f64 {
+    (2.0 * upper(z.abs())).min(1.0)
 }
 
 /// What a value known only to lie below a bound adds to a log-likelihood and to its derivatives.

@@ -1,6 +1,7 @@
 //! The highest point of a censored likelihood, by Newton's method.
 
-use super::likelihood::{Likelihood, Olsen, Pass};
+use super::likelihood::{Likelihood, Pass};
+use super::scaling::Olsen;
 
 /// Newton steps from one start, at most (a count). Source: a fit takes 4 to 8; a scale that is
 /// wrong by a factor of a million takes 20 more, since a step at most doubles it.
@@ -12,6 +13,11 @@ pub const SMALL_DECREMENT: f64 = 1e-12;
 
 /// Halvings of one step, at most (a count). Source: 2⁻⁶⁰ of a step is nothing in f64.
 pub const MOST_HALVINGS: usize = 60;
+
+/// The climb stops for the likelihood to be scaled anew where the scale is more than this factor
+/// from the guessed one (a pure number). Source: keeps moments of measured values good to ten
+/// digits, since their rounding grows with the square of the factor.
+const OUT_OF_SCALE: f64 = 1e3;
 
 /// A decrement under which a full step is taken without asking whether it climbs (a pure number).
 /// Source: well inside the region of quadratic convergence, where a rise is lost in rounding.
@@ -46,7 +52,7 @@ pub struct Peak {
 /// 200 steps of at most 60 halvings.
 ///
 /// # Errors
-/// The number of steps, where the search did not end.
+/// [`NoPeak`]: the search did not end, or the likelihood has to be scaled anew.
 ///
 /// # Reference
 /// Olsen (1978), Econometrica 46:1211–1215 [from memory]. Worked example W14; 916 real series.
@@ -54,12 +60,11 @@ pub fn climb(likelihood: &Likelihood, start: Olsen) -> Result<Peak, NoPeak> {
     let mut at = start;
     let mut pass = likelihood.pass(at);
     for steps in 1..=MOST_STEPS {
-        let Some(step) = solve3(pass.bend, pass.gradient) else {
-            return Err(NoPeak { steps });
-        };
+        let lost = NoPeak::NotReached { steps };
+        let step = solve3(pass.bend, pass.gradient).ok_or(lost)?;
         let decrement: f64 = step.iter().zip(pass.gradient).map(|(s, g)| s * g).sum();
         if !decrement.is_finite() {
-            return Err(NoPeak { steps });
+            return Err(lost);
         }
         let mut share = 1.0;
         let mut halvings = 0;
@@ -74,10 +79,13 @@ pub fn climb(likelihood: &Likelihood, start: Olsen) -> Result<Peak, NoPeak> {
             share *= 0.5;
             halvings += 1;
             if halvings > MOST_HALVINGS {
-                return Err(NoPeak { steps });
+                return Err(lost);
             }
         };
         (at, pass) = (next, next_pass);
+        if !(1.0 / OUT_OF_SCALE..=OUT_OF_SCALE).contains(&at.a) {
+            return Err(NoPeak::OutOfScale { at, steps });
+        }
         if decrement < SMALL_DECREMENT {
             return Ok(Peak {
                 at,
@@ -87,14 +95,24 @@ pub fn climb(likelihood: &Likelihood, start: Olsen) -> Result<Peak, NoPeak> {
             });
         }
     }
-    Err(NoPeak { steps: MOST_STEPS })
+    Err(NoPeak::NotReached { steps: MOST_STEPS })
 }
 
-/// The climb did not arrive.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub struct NoPeak {
-    /// Steps taken.
-    pub steps: usize,
+/// Why a climb stopped short of the maximum.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum NoPeak {
+    /// It did not arrive.
+    NotReached {
+        /// Steps taken.
+        steps: usize,
+    },
+    /// The scale is far from the guessed one: scale the likelihood anew about `at` and go on.
+    OutOfScale {
+        /// How far it came.
+        at: Olsen,
+        /// Steps taken.
+        steps: usize,
+    },
 }
 
 fn moved(at: Olsen, step: [f64; 3], share: f64) -> Olsen {

@@ -96,7 +96,7 @@ pub fn student_upper(t: f64, degrees: f64) -> f64 {
 /// # Reference
 /// As [`student_upper`].
 pub fn student_two_sided(t: f64, degrees: f64) -> f64 {
-    2.0 * student_upper(t.abs(), degrees)
+    (2.0 * student_upper(t.abs(), degrees)).min(1.0)
 }
 
 /// The t with the probability `tail` over it.
@@ -115,7 +115,8 @@ pub fn student_two_sided(t: f64, degrees: f64) -> f64 {
 /// As [`student_upper`].
 ///
 /// # Limits
-/// `tail` is first brought into 1e-12 … 1 − 1e-12. Relative error 1e-12.
+/// `tail` is first brought into 1e-12 … 1 − 1e-12. Relative error 3e-12; over 1,000 degrees and for
+/// a tail of 1e-10, 2e-11.
 ///
 /// # Reference
 /// Abramowitz & Stegun (1964), 26.7.5 [from memory; checked]. `tests/reference/tails.csv`.

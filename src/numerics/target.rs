@@ -4,8 +4,9 @@
 //! lifts the line. Each target is a plane in Olsen's parameters, on which the log-likelihood is
 //! still concave.
 
-use super::likelihood::{Likelihood, Olsen};
+use super::likelihood::Likelihood;
 use super::peak::Peak;
+use super::scaling::Olsen;
 
 /// A quantity of the line, in the scaled units of a [`Likelihood`].
 #[derive(Clone, Copy, Debug, PartialEq)]

@@ -54,8 +54,24 @@ pub struct DateValue {
     pub in_fit: bool,
     /// Whether the value is a detect taken as a non-detect at its reporting limit.
     pub recensored: bool,
+    /// Whether the value stands for a non-detect, as the site file asks.
+    pub substituted: bool,
     /// The records whose numbers enter the value.
     pub records: Vec<RecordId>,
+}
+
+impl DateValue {
+    /// Whether the substance was seen on the date.
+    #[must_use]
+    pub fn is_detect(&self) -> bool {
+        self.reading.is_detect() && !self.substituted
+    }
+
+    /// Whether the date has a measured value, which is what needs count.
+    #[must_use]
+    pub fn is_measured(&self) -> bool {
+        matches!(self.reading, Reading::Measured(_)) && !self.substituted
+    }
 }
 
 /// One value a date, and what became of every candidate.
@@ -196,6 +212,7 @@ pub fn points(series: &WellSeries, rules: &MergeRules) -> Points {
             estimated: merged.estimated,
             in_fit,
             recensored: merged.used.iter().any(|record| recensored.contains(record)),
+            substituted: replaced,
             records: merged.used,
         });
     }

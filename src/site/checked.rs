@@ -3,6 +3,7 @@
 use std::collections::BTreeMap;
 
 use chrono::NaiveDate;
+use serde::Serialize;
 
 use crate::terms::{Concentration, Unit};
 
@@ -52,7 +53,8 @@ pub struct Site {
 }
 
 /// What becomes of an analyte that is not listed.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+#[serde(rename_all = "kebab-case")]
 pub enum Listing {
     /// It is set aside.
     Listed,
@@ -61,7 +63,7 @@ pub enum Listing {
 }
 
 /// Everything in the site file that changes a number of every series.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct Settings {
     /// The confidence of every two-sided interval.
     pub confidence: f64,
@@ -93,7 +95,7 @@ pub struct Settings {
 }
 
 /// The fewest data for a rate.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
 pub struct RateNeeds {
     /// Dates.
     pub dates: usize,
@@ -102,7 +104,7 @@ pub struct RateNeeds {
 }
 
 /// The fewest data for a date.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub struct DateNeeds {
     /// Dates.
     pub dates: usize,
@@ -113,7 +115,7 @@ pub struct DateNeeds {
 }
 
 /// A statistical setting that is not at its default, and why.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct OffDefault {
     /// The key: `confidence`.
     pub key: String,
@@ -126,7 +128,7 @@ pub struct OffDefault {
 }
 
 /// Thresholds of flags.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub struct FlagThresholds {
     /// A record shorter than this many years is short.
     pub short_record_years: f64,
@@ -139,7 +141,7 @@ pub struct FlagThresholds {
 }
 
 /// How the files that match a pattern are read.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct ResultsRule {
     /// The pattern, with `/` between folders, relative to the site folder.
     pub files: String,
@@ -229,7 +231,7 @@ pub struct Well {
 }
 
 /// Another name of a well, for a while or always.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct WellAlias {
     /// The name as results files write it.
     pub name: String,
@@ -255,7 +257,7 @@ pub struct WellLimit {
 }
 
 /// What each round should hold.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct Expected {
     /// The wells; all listed ones where empty.
     pub wells: Vec<String>,
@@ -266,7 +268,7 @@ pub struct Expected {
 }
 
 /// Something that happened at the site.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct Event {
     /// When it happened.
     pub date: NaiveDate,
@@ -287,7 +289,8 @@ pub struct Event {
 }
 
 /// Whether an event makes records begin anew.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+#[serde(rename_all = "kebab-case")]
 pub enum Restart {
     /// The window of its wells begins on its date.
     Yes,
@@ -296,7 +299,7 @@ pub enum Restart {
 }
 
 /// A decision about named records.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct Decision {
     /// Its name in the ledger: `decision:<id>`.
     pub id: String,
@@ -327,7 +330,7 @@ pub struct Decision {
 }
 
 /// What a qualifier or a detection condition means.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct Qualifier {
     /// The code, as the laboratory writes it; either this or `condition` is there.
     pub code: Option<String>,

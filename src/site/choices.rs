@@ -4,7 +4,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::terms::verdict::coded;
 
-use super::written::{At, FromToml, Problems, word};
+use super::written::{At, FromToml, MapKey, Problems, unknown_key, word};
 
 /// Declares an enum of words that the site file may write.
 macro_rules! choice {
@@ -29,6 +29,68 @@ macro_rules! choice {
     };
 }
 pub(super) use choice;
+
+/// Lets an enum's codes be the keys of a table.
+macro_rules! keys {
+    ($name:ident) => {
+        impl MapKey for $name {
+            const KNOWN: &'static [Self] = Self::ALL;
+
+            fn from_key(key: &str, at: &At<()>, problems: &mut Problems<'_>) -> Option<Self> {
+                let found = Self::from_code(key);
+                if found.is_none() {
+                    let known: Vec<_> = Self::ALL.iter().map(|case| case.code()).collect();
+                    problems.tell(at, unknown_key(key, &known));
+                }
+                found
+            }
+
+            fn written(&self) -> &str {
+                self.code()
+            }
+        }
+    };
+}
+pub(super) use keys;
+
+choice! {
+    /// A setting or threshold that may carry a reason.
+    Setting {
+        /// The confidence of every interval.
+        Confidence = "confidence",
+        /// The date by which limits are to be met.
+        GoalDate = "goal-date",
+        /// Years past the last used date beyond which a date is not told.
+        HorizonYears = "horizon-years",
+        /// Years after which the newest result is stale.
+        StaleAfterYears = "stale-after-years",
+        /// The rate within which an interval shows a flat series.
+        FlatMargin = "flat-margin",
+        /// The length of a round.
+        Round = "round",
+        /// Days by which a sample may miss its round's edge.
+        RoundGraceDays = "round-grace-days",
+        /// What a rate needs.
+        RateNeeds = "rate-needs",
+        /// What a date needs.
+        DateNeeds = "date-needs",
+        /// What several detects of one date give.
+        SameDay = "same-day",
+        /// What field duplicates do.
+        Duplicates = "duplicates",
+        /// What non-detects contribute to a fit.
+        NonDetects = "non-detects",
+        /// A record shorter than this is short.
+        ShortRecordYears = "short-record-years",
+        /// The share over which a series is mostly non-detects.
+        MostlyNonDetects = "mostly-non-detects",
+        /// The share of estimated detects over which the flag is raised.
+        EstimatedResults = "estimated-results",
+        /// The difference over which duplicates differ.
+        DuplicatesRpd = "duplicates-rpd",
+    }
+}
+keys!(Setting);
 
 choice! {
     /// How long a monitoring round is: a calendar period.

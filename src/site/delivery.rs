@@ -4,7 +4,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::terms::verdict::coded;
 
-use super::choices::choice;
+use super::choices::{choice, keys};
 use super::written::{At, FromToml, MapKey, Problems, unknown_key, word};
 
 choice! {
@@ -65,16 +65,7 @@ impl Column {
     }
 }
 
-impl MapKey for Column {
-    fn from_key(key: &str, at: &At<()>, problems: &mut Problems<'_>) -> Option<Self> {
-        let column = Self::from_code(key);
-        if column.is_none() {
-            let known: Vec<_> = Self::ALL.iter().map(|column| column.key()).collect();
-            problems.tell(at, unknown_key(key, &known));
-        }
-        column
-    }
-}
+keys!(Column);
 
 choice! {
     /// What kind of sample a record tells of.
@@ -176,7 +167,8 @@ choice! {
 
 /// Whether years of two digits are read: 70 to 99 as 1970 to 1999, 00 to 69 as 2000 to 2069 (the
 /// convention of POSIX `%y`).
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+#[serde(rename_all = "kebab-case")]
 pub enum TwoDigitYears {
     /// A date with such a year is unreadable.
     Refused,

@@ -33,7 +33,7 @@ pub enum WellMatch<'s> {
 
 impl Site {
     /// The limit in force at a date: the well's own for the analyte, else the analyte's. Before
-    /// the first effective date the first limit stands.
+    /// any has begun, the first to begin, again of the well before the analyte.
     #[must_use]
     pub fn limit_for(&self, well: &str, analyte: &str, as_of: NaiveDate) -> Option<&Limit> {
         let own = self
@@ -42,10 +42,11 @@ impl Site {
             .flat_map(|well| &well.limits)
             .filter(|limit| limit.analyte == analyte)
             .map(|limit| &limit.limit);
-        in_force(own, as_of).or_else(|| {
-            let listed = self.analyte_named(analyte).into_iter().flat_map(|a| &a.limits);
-            in_force(listed, as_of)
-        })
+        let listed = self.analyte_named(analyte).into_iter().flat_map(|a| &a.limits);
+        let begun = |limit: &&Limit| limit.from.is_none_or(|from| from <= as_of);
+        // Limits stand in the order in which they begin.
+        let in_force = own.clone().rfind(begun);
+        in_force.or_else(|| listed.clone().rfind(begun)).or_else(|| own.chain(listed).next())
     }
 
     /// The date by which the limit is to be met: the well's, else the analyte's, else the site's.
@@ -140,13 +141,4 @@ impl WellAlias {
             self.from.is_none_or(|from| from <= on) && self.to.is_none_or(|to| on <= to)
         })
     }
-}
-
-/// The last limit that has begun, of limits sorted by their beginning; else the first.
-fn in_force<'l>(
-    limits: impl Iterator<Item = &'l Limit> + Clone,
-    as_of: NaiveDate,
-) -> Option<&'l Limit> {
-    let begun = |limit: &&Limit| limit.from.is_none_or(|from| from <= as_of);
-    limits.clone().filter(begun).last().or_else(|| limits.into_iter().next())
 }

@@ -27,6 +27,7 @@ pub use checked::{
 };
 pub use choices::{
     DecisionKind, Depths, Duplicates, EventKind, Meaning, NonDetects, Role, RoundLength, SameDay,
+    Setting,
 };
 pub use delivery::{
     Column, DateOrder, Decimal, Encoding, Layout, SampleType, SerialDates, Sigma, TwoDigitYears,

@@ -97,9 +97,9 @@ pub enum ProblemKind {
         wants: &'static str,
     },
     /// An empty text or list.
-    #[error("is empty; write {wants} or leave the key out")]
+    #[error("is empty; {wants}")]
     Empty {
-        /// What belongs there.
+        /// What to do.
         wants: &'static str,
     },
     /// Two keys that say the same thing in two ways.

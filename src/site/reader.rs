@@ -6,7 +6,7 @@ use super::check::check;
 use super::checked::Site;
 use super::file::SiteFile;
 use super::problem::Problem;
-use super::syntax::settle;
+use super::syntax::{mend, settle};
 use super::written::{At, FromToml, Problems};
 
 /// Reads and checks a site file.
@@ -19,12 +19,12 @@ use super::written::{At, FromToml, Problems};
 pub fn read(text: &str, path_shown: &str) -> Result<Site, Vec<Problem>> {
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
     let mut problems = Problems::new(text, path_shown);
-    let (document, errors) = DeTable::parse_recoverable(text);
-    let document = DeValue::Table(document.into_inner());
+    let (mended, broken) = mend(text, &problems);
+    let document = DeValue::Table(DeTable::parse_recoverable(&mended).0.into_inner());
     let top = At { line: 1, key: String::new(), value: () };
     let file = SiteFile::from_toml(&document, &top, &mut problems).unwrap_or_default();
     let site = check(&file, &mut problems);
-    settle(text, &errors, &mut problems);
+    settle(broken, &mut problems);
     let found = problems.into_sorted();
     if found.is_empty() {
         return Ok(site);

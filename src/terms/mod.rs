@@ -8,7 +8,11 @@ pub mod time;
 pub mod verdict;
 pub mod reasons;
 pub mod flag;
+pub mod band;
+pub mod stage;
 
+pub use band::BandPoint;
+pub use stage::Stage;
 pub use flag::{Figure, Flag, FlagCode, Standing};
 pub use name::{folded, nearest};
 pub use reading::{Concentration, Reading};

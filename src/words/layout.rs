@@ -3,6 +3,8 @@
 //! Widths are counted in terminal columns. Styles are put on after wrapping, so that no escape
 //! sequence is ever counted or cut; without colour the text is the same without them.
 
+/// A blank at which no line is broken.
+pub const HARD_SPACE: char = '\u{a0}';
 /// The widest line that is written, so that sentences stay readable on wide terminals.
 const WIDEST: usize = 100;
 /// The narrowest line that is wrapped to.
@@ -100,6 +102,14 @@ impl Lines {
         }
     }
 
+    /// A name that stands out, indented.
+    pub fn strong(&mut self, text: &str, indent: usize) {
+        for line in wrapped(text, self.width, indent, indent + 2) {
+            let line = self.style.bold(&line);
+            self.line(&line);
+        }
+    }
+
     /// A paragraph that stands back.
     pub fn aside(&mut self, text: &str, indent: usize) {
         for line in wrapped(text, self.width, indent, indent) {
@@ -170,13 +180,14 @@ fn padded(cell: &str, width: usize, align: Align) -> String {
 }
 
 /// A text in lines of at most `width` columns, broken at blanks; a word longer than a line is cut.
+/// A no-break space ([`HARD_SPACE`]) is never broken at, and comes out as a blank.
 #[must_use]
 pub fn wrapped(text: &str, width: usize, first: usize, rest: usize) -> Vec<String> {
     let mut lines = Vec::new();
     let mut line = " ".repeat(first);
     let (mut used, mut empty) = (first, true);
-    for word in text.split_whitespace() {
-        let mut word = word.to_owned();
+    for word in text.split([' ', '\n']).filter(|word| !word.is_empty()) {
+        let mut word = word.replace(HARD_SPACE, " ");
         if !empty && used + 1 + columns(&word) > width {
             lines.push(std::mem::replace(&mut line, " ".repeat(rest)));
             (used, empty) = (rest, true);

@@ -158,8 +158,9 @@ fn reach_text(series: &SeriesFinding, reach: NaiveDate) -> String {
     format!("{date} ({interval})")
 }
 
-/// When a rising line crosses its limit.
-fn exceed(series: &SeriesFinding) -> Option<String> {
+/// When a rising line crosses its limit, as a sentence.
+#[must_use]
+pub fn exceed(series: &SeriesFinding) -> Option<String> {
     let crossing = month(series.exceed_date?);
     let early = series.exceed_earliest.map_or_else(
         || "no early end could be given".to_owned(),

@@ -7,24 +7,16 @@ use crate::ledger::Told;
 use crate::ledger::told::Expected;
 use crate::site::JoinedBy;
 
-/// The keys of [`Told::Plain`] and their sentences.
-pub const PLAIN: &[(&str, &str)] = &[
-    (
-        "no-limit-columns",
-        "the file has no column for reporting or detection limits, so a non-detect is used only \
-         where its result is written as `<` and a number",
-    ),
-    ("condition-against-value", "the detection condition says not detected, yet a larger value is given"),
-    ("date-with-time", "the date carries a time, which is kept"),
-    ("cas-restored", "a CAS number that a spreadsheet had turned into a date was restored"),
-];
-
 /// One grouped line: `34 records: unit UG/L read as ug/L`.
 #[must_use]
 pub fn sentence(told: &Told, records: usize) -> String {
     let text = detail(told);
     match told {
-        Told::DecodedWindows1252 { .. } | Told::ColumnNotUsed { .. } => text,
+        Told::DecodedWindows1252 { .. }
+        | Told::ColumnNotUsed { .. }
+        | Told::FileLeftAlone { .. }
+        | Told::FileWithoutRecords { .. }
+        | Told::SettingOffDefault { .. } => text,
         _ if records == 0 => text,
         _ => format!("{}: {text}", counted(records, "record", "records")),
     }
@@ -102,7 +94,15 @@ pub fn detail(told: &Told) -> String {
         Told::Unreadable { column, found, expected } => {
             format!("{column}: found `{}`, expected {}", shown(found), expectation(*expected))
         }
-        Told::Plain { key } => plain(key).to_owned(),
+        Told::FileLeftAlone { file } => {
+            format!("{} is no results file and was left alone", shown(file))
+        }
+        Told::FileWithoutRecords { file } => {
+            format!("{} has a header and no record below it", shown(file))
+        }
+        Told::SettingOffDefault { key, is } => {
+            format!("setting {} is off its default: {}", shown(key), shown(is))
+        }
         Told::LimitsDiffer => {
             "the non-detect's result and its reporting limit differ; the larger is its limit".into()
         }
@@ -123,11 +123,6 @@ pub fn detail(told: &Told) -> String {
         Told::OutsideFit => "outside-fit".into(),
         Told::DuplicateAveraged => "averaged".into(),
     }
-}
-
-/// The sentence of a plain note; an unknown key stands for itself.
-fn plain(key: &'static str) -> &'static str {
-    PLAIN.iter().find(|(known, _)| *known == key).map_or(key, |(_, sentence)| sentence)
 }
 
 /// What a cell should have held.
@@ -151,7 +146,7 @@ pub fn weight(told: &Told) -> u8 {
         | Told::AnalyteJoined { .. }
         | Told::WellAlias { .. }
         | Told::LimitsDiffer
-        | Told::Plain { .. } => 0,
+        | Told::FileLeftAlone { .. } => 0,
         Told::CasCheckDigit { .. }
         | Told::WellNotListed { .. }
         | Told::FractionAssumed { .. }
@@ -164,6 +159,8 @@ pub fn weight(told: &Told) -> u8 {
         | Told::InBlank
         | Told::NonDetectUnderDetect
         | Told::Recensored
+        | Told::FileWithoutRecords { .. }
+        | Told::SettingOffDefault { .. }
         | Told::Revised { .. } => 2,
         Told::AnalyteNotListed { .. }
         | Told::UnknownQualifier { .. }

@@ -1,14 +1,15 @@
 //! Rows of columns into CSV text.
 
+use std::borrow::Borrow;
 use std::io::{self, Write};
 
 use csv::{Terminator, Writer, WriterBuilder};
 
 use crate::deliver::cells::in_csv;
-use crate::findings::{Column, Findings};
+use crate::findings::{Cell, Column, Findings, SeriesFinding};
 use crate::series::SeriesKey;
 
-/// A writer with this program's line ends and quoting.
+/// A writer with this program's line ends.
 pub fn writer<W: Write>(to: W) -> Writer<W> {
     WriterBuilder::new().terminator(Terminator::Any(b'\n')).from_writer(to)
 }
@@ -17,67 +18,63 @@ pub fn writer<W: Write>(to: W) -> Writer<W> {
 ///
 /// # Errors
 /// Where the target cannot be written.
-pub fn write_rows<T>(
+pub fn write_rows<T, R: Borrow<T>>(
     columns: &[Column<T>],
-    rows: impl IntoIterator<Item = T>,
+    rows: impl IntoIterator<Item = R>,
     to: &mut dyn Write,
 ) -> io::Result<()> {
     let mut writer = writer(to);
     writer.write_record(columns.iter().map(|column| column.name))?;
     for row in rows {
-        writer.write_record(columns.iter().map(|column| in_csv(&(column.cell)(&row))))?;
+        writer.write_record(columns.iter().map(|column| in_csv(&(column.cell)(row.borrow()))))?;
     }
     writer.flush()
 }
 
 /// The same as text.
-pub fn text<T>(columns: &[Column<T>], rows: impl IntoIterator<Item = T>) -> String {
+pub fn text<T, R: Borrow<T>>(columns: &[Column<T>], rows: impl IntoIterator<Item = R>) -> String {
     let mut bytes = Vec::new();
-    // Writing into memory fails only for records of unequal length, and every row here has one cell
-    // for each column.
-    write_rows(columns, rows, &mut bytes).expect("memory takes every row");
-    // Every field is a `String`, and the quoting adds ASCII.
+    // Writing into memory fails only for rows of unequal length, and every row has one cell a column.
+    write_rows(columns, rows, &mut bytes).expect("memory takes rows of one length");
+    // Every field is a `String`, and the quoting adds ASCII alone.
     String::from_utf8(bytes).expect("fields are UTF-8")
 }
 
-/// The columns that name a series, for tables whose rows belong to one.
-macro_rules! keyed_columns {
-    ($row:ident: $type:ty; $($name:literal => $cell:expr,)*) => {
-        &[
-            Column { name: "site", cell: |$row: &$type| crate::deliver::tables::rows::words(&$row.key.site) },
-            Column { name: "well", cell: |$row: &$type| crate::deliver::tables::rows::words(&$row.key.well) },
-            Column { name: "analyte", cell: |$row: &$type| crate::deliver::tables::rows::words(&$row.key.analyte) },
-            Column { name: "fraction", cell: |$row: &$type| crate::deliver::tables::rows::words($row.key.fraction_code()) },
-            Column { name: "depth", cell: |$row: &$type| crate::deliver::tables::rows::words($row.key.depth_text()) },
-            $(Column { name: $name, cell: |$row: &$type| $cell },)*
-        ]
-    };
-}
-pub(crate) use keyed_columns;
-
 /// A text cell, empty where there is no text.
 #[must_use]
-pub fn words(text: &str) -> crate::findings::Cell {
-    if text.is_empty() { crate::findings::Cell::Empty } else { crate::findings::Cell::Text(text.to_owned()) }
+pub fn words(text: &str) -> Cell {
+    if text.is_empty() { Cell::Empty } else { Cell::Text(text.to_owned()) }
 }
 
-/// One row of a table that belongs to a series, with what it is a row of.
-pub struct OfSeries<'a, T> {
+/// A yes or no.
+#[must_use]
+pub fn yes(value: bool) -> Cell {
+    words(if value { "yes" } else { "no" })
+}
+
+/// A row that belongs to a series.
+#[derive(Clone, Debug)]
+pub struct OfSeries<T> {
     /// The series.
-    pub key: &'a SeriesKey,
+    pub key: SeriesKey,
     /// The row's own part.
-    pub of: &'a T,
+    pub of: T,
 }
+
 /// Every part of every series, in the order of the summary.
-pub fn of_series<'a, T: 'a, I>(
+pub fn of_series<'a, T: Clone + 'a>(
     findings: &'a Findings,
-    parts: impl Fn(&'a crate::findings::SeriesFinding) -> I + 'a,
-) -> impl Iterator<Item = OfSeries<'a, T>>
-where
-    I: IntoIterator<Item = &'a T>,
-{
-    findings
-        .series
-        .iter()
-        .flat_map(move |series| parts(series).into_iter().map(|of| OfSeries { key: &series.key, of }))
+    parts: impl Fn(&'a SeriesFinding) -> &'a [T] + 'a,
+) -> impl Iterator<Item = OfSeries<T>> + 'a {
+    findings.series.iter().flat_map(move |series| {
+        parts(series).iter().map(|part| OfSeries { key: series.key.clone(), of: part.clone() })
+    })
 }
+
+/// Columns of a table, each with the cell of one row.
+macro_rules! columns {
+    ($row:ident: $type:ty; $($name:literal => $cell:expr,)+) => {
+        &[$(Column { name: $name, cell: |$row: &$type| $cell },)+]
+    };
+}
+pub(crate) use columns;

@@ -41,16 +41,21 @@ pub(super) fn check(at: &At<AnalyteTable>, problems: &mut Problems<'_>) -> Optio
     })
 }
 
-/// Tells of names, aliases and CAS numbers that two analytes carry.
+/// Tells of names, aliases and CAS numbers that two analytes carry. Two spellings of one name at
+/// one analyte are no harm.
 pub(super) fn distinct<'a>(
     blocks: impl Iterator<Item = &'a At<AnalyteTable>> + Clone,
     problems: &mut Problems<'_>,
 ) {
     let every_name = blocks.clone().flat_map(|block| {
         let aliases = block.value.aliases.iter().flat_map(|list| &list.value);
-        block.value.name.iter().chain(aliases)
+        let mut own: Vec<(String, &At<String>)> =
+            block.value.name.iter().chain(aliases).map(|at| (folded(&at.value), at)).collect();
+        own.sort_by(|(a, _), (b, _)| a.cmp(b));
+        own.dedup_by(|(a, _), (b, _)| a == b);
+        own
     });
-    names::distinct(every_name.map(|at| (folded(&at.value), at)), problems);
+    names::distinct(every_name, problems);
     let numbers = blocks.filter_map(|block| block.value.cas.as_ref());
     names::distinct(numbers.map(|at| (trimmed(&at.value).to_owned(), at)), problems);
 }
@@ -97,7 +102,7 @@ fn amounts(table: &AnalyteTable, problems: &mut Problems<'_>) -> Vec<(Limit, At<
             problems.tell(at, ProblemKind::Needs { other });
         }
     }
-    let single = table.limit.as_ref().map(|at| {
+    let single = table.limit.as_ref().filter(|_| table.limits.is_none()).map(|at| {
         let (from, source) = (day(&table.limit_from), copy(&table.limit_source));
         (Limit { value: at.value.value, from, source }, at.clone())
     });

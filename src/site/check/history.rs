@@ -5,8 +5,7 @@ use super::super::choices::{DecisionKind, EventKind};
 use super::super::file::{DecisionTable, EventTable, ExpectedTable, QualifierTable};
 use super::super::problem::ProblemKind;
 use super::super::written::{At, Problems};
-use super::results::inside_folder;
-use super::{copy, day, in_order, names, within};
+use super::{copy, day, in_order, names, results, within};
 
 /// Checks one `[[expected]]` block.
 pub(super) fn expected(
@@ -79,7 +78,7 @@ pub(super) fn decision(
         within(record, &(1..=u64::from(u32::MAX)), problems);
     }
     if let Some(file) = &table.file {
-        inside_folder(file, problems);
+        results::inside_folder(file, problems);
     }
     if names_nothing(table) {
         problems.tell(at, ProblemKind::NamesNothing);
@@ -173,7 +172,7 @@ pub(super) fn qualifier(at: &At<QualifierTable>, problems: &mut Problems<'_>) ->
         (None, Some(_)) => {}
     }
     for pattern in table.files.iter().flat_map(|list| &list.value) {
-        inside_folder(pattern, problems);
+        results::pattern(pattern, problems);
     }
     Some(Qualifier {
         code: copy(&table.code),

@@ -102,13 +102,14 @@ fn in_order(from: Option<&At<Day>>, to: Option<&At<Day>>, problems: &mut Problem
     }
 }
 
-/// Tells of a number out of its range.
+/// Whether a number is within its range; one that is not is told.
 fn within<T: PartialOrd + Display>(
     at: &At<T>,
     range: &RangeInclusive<T>,
     problems: &mut Problems<'_>,
-) {
-    if !range.contains(&at.value) {
+) -> bool {
+    let holds = range.contains(&at.value);
+    if !holds {
         let (low, high) = (range.start(), range.end());
         let kind = ProblemKind::OutOfRange {
             found: at.value.to_string(),
@@ -116,4 +117,5 @@ fn within<T: PartialOrd + Display>(
         };
         problems.tell(at, kind);
     }
+    holds
 }

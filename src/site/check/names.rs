@@ -1,5 +1,7 @@
 //! Lists of names, and names that refer to what is listed.
 
+use std::collections::BTreeMap;
+
 use super::super::checked::{Listing, Site};
 use super::super::problem::ProblemKind;
 use super::super::written::{At, Problems};
@@ -65,18 +67,20 @@ pub(super) fn analyte(at: &At<String>, site: &Site, problems: &mut Problems<'_>)
 }
 
 /// Tells of the second and every further thing that carries one name.
-pub(super) fn distinct<'a, K: PartialEq, T: std::fmt::Display + 'a>(
+pub(super) fn distinct<'a, K: Ord, T: std::fmt::Display + 'a>(
     items: impl Iterator<Item = (K, &'a At<T>)>,
     problems: &mut Problems<'_>,
 ) {
-    let mut seen: Vec<(K, usize)> = Vec::new();
+    let mut seen: BTreeMap<K, usize> = BTreeMap::new();
     for (name, at) in items {
-        match seen.iter().find(|(known, _)| *known == name) {
-            Some((_, line)) => {
+        match seen.get(&name) {
+            Some(line) => {
                 let what = format!("\"{}\"", at.value);
                 problems.tell(at, ProblemKind::Duplicate { what, first: Some(*line) });
             }
-            None => seen.push((name, at.line)),
+            None => {
+                seen.insert(name, at.line);
+            }
         }
     }
 }

@@ -34,7 +34,7 @@ impl ResultsRule {
 pub(super) fn check(at: &At<ResultsTable>, problems: &mut Problems<'_>) -> ResultsRule {
     let table = &at.value;
     if let Some(files) = &table.files {
-        inside_folder(files, problems);
+        pattern(files, problems);
     }
     let plain = ResultsRule::plain();
     let decimal = copy(&table.decimal).unwrap_or(plain.decimal);
@@ -42,7 +42,7 @@ pub(super) fn check(at: &At<ResultsTable>, problems: &mut Problems<'_>) -> Resul
         files: copy(&table.files).unwrap_or(plain.files),
         encoding: copy(&table.encoding),
         separator: table.separator.as_ref().and_then(|at| separator(at, problems)),
-        columns: unplaced(table.columns.as_ref()),
+        columns: table.columns.as_ref().map(|at| at.value.values()).unwrap_or_default(),
         date_order: copy(&table.date_order),
         two_digit_years: match copy(&table.two_digit_years) {
             Some(true) => TwoDigitYears::Read,
@@ -53,7 +53,7 @@ pub(super) fn check(at: &At<ResultsTable>, problems: &mut Problems<'_>) -> Resul
         thousands: table.thousands.as_ref().and_then(|at| thousands(at, decimal, problems)),
         ppb_in_water: copy(&table.ppb_in_water).unwrap_or(plain.ppb_in_water),
         uncertainty: copy(&table.uncertainty),
-        sample_types: unplaced(table.sample_types.as_ref()),
+        sample_types: table.sample_types.as_ref().map(|at| at.value.values()).unwrap_or_default(),
     }
 }
 
@@ -64,6 +64,17 @@ pub(super) fn distinct<'a>(
 ) {
     let files = blocks.filter_map(|block| block.value.files.as_ref());
     names::distinct(files.map(|at| (at.value.clone(), at)), problems);
+}
+
+/// Tells of a pattern that leaves the site folder, or that can match nothing as it is written.
+pub(super) fn pattern(at: &At<String>, problems: &mut Problems<'_>) {
+    inside_folder(at, problems);
+    let whole = |part: &str| !part.contains("**") || part == "**";
+    let closed = at.value.matches('[').count() == at.value.matches(']').count();
+    if !at.value.split('/').all(whole) || !closed {
+        let wants = "a pattern with *, ?, [ ] or, between slashes, **";
+        problems.tell(at, ProblemKind::WrongText { found: at.value.clone(), wants });
+    }
 }
 
 /// Tells of a path or pattern that leaves the site folder or is written for one system only.
@@ -77,11 +88,6 @@ pub(super) fn inside_folder(at: &At<String>, problems: &mut Problems<'_>) {
         let wants = "inside the site folder, with / between folders, such as results/*.csv";
         problems.tell(at, ProblemKind::WrongText { found: path.clone(), wants });
     }
-}
-
-fn unplaced<K: Ord + Clone, V: Clone>(map: Option<&At<BTreeMap<K, At<V>>>>) -> BTreeMap<K, V> {
-    let entries = map.into_iter().flat_map(|map| &map.value);
-    entries.map(|(key, at)| (key.clone(), at.value.clone())).collect()
 }
 
 fn separator(at: &At<OneChar>, problems: &mut Problems<'_>) -> Option<u8> {

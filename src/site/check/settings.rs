@@ -9,32 +9,11 @@ use std::fmt::{Debug, Display};
 use std::ops::RangeInclusive;
 
 use super::super::checked::{DateNeeds, FlagThresholds, OffDefault, RateNeeds, Settings};
-use super::super::choices::{Duplicates, NonDetects, RoundLength, SameDay};
+use super::super::choices::{Duplicates, NonDetects, RoundLength, SameDay, Setting};
 use super::super::file::{DateNeedsTable, FlagsTable, RateNeedsTable, SettingsTable, SiteFile};
 use super::super::problem::ProblemKind;
-use super::super::written::{At, Problems, unknown_key};
+use super::super::written::{At, Problems};
 use super::{copy, day, within};
-
-/// Settings that may carry a reason and need none.
-const FREE: [&str; 2] = ["goal-date", "round"];
-
-/// The statistical settings, in the order of the key list.
-const STATISTICAL: [&str; 14] = [
-    "confidence",
-    "horizon-years",
-    "stale-after-years",
-    "flat-margin",
-    "round-grace-days",
-    "rate-needs",
-    "date-needs",
-    "same-day",
-    "duplicates",
-    "non-detects",
-    "short-record-years",
-    "mostly-non-detects",
-    "estimated-results",
-    "duplicates-rpd",
-];
 
 impl Default for Settings {
     fn default() -> Self {
@@ -74,37 +53,59 @@ pub(super) fn check(file: &SiteFile, problems: &mut Problems<'_>) -> (Settings, 
     let table = file.settings.as_ref().map_or(&unwritten.0, |at| &at.value);
     let flags = file.flags.as_ref().map_or(&unwritten.1, |at| &at.value);
     let mut settings = Settings::default();
-    let mut off = Off { why: copy(&table.why).unwrap_or_default(), found: Vec::new(), problems };
-    off.known_reasons();
+    let why = table.why.as_ref().map(|at| at.value.values()).unwrap_or_default();
+    let mut off = Off { why, found: Vec::new(), problems };
     settings.goal_date = day(&table.goal_date);
     settings.round = copy(&table.round).unwrap_or(settings.round);
     let Settings { confidence, horizon_years, stale_after_years, flat_margin, .. } = settings;
-    settings.confidence = off.number(&table.confidence, confidence, 0.5..=0.999);
-    settings.horizon_years = off.number(&table.horizon_years, horizon_years, 1.0..=1000.0);
-    settings.stale_after_years =
-        off.number(&table.stale_after_years, stale_after_years, 0.1..=100.0);
-    settings.flat_margin = off.number(&table.flat_margin, flat_margin, 0.0001..=10.0);
+    settings.confidence =
+        off.number(Setting::Confidence, &table.confidence, confidence, 0.5..=0.999);
+    settings.horizon_years =
+        off.number(Setting::HorizonYears, &table.horizon_years, horizon_years, 1.0..=1000.0);
+    settings.stale_after_years = off.number(
+        Setting::StaleAfterYears,
+        &table.stale_after_years,
+        stale_after_years,
+        0.1..=100.0,
+    );
+    settings.flat_margin =
+        off.number(Setting::FlatMargin, &table.flat_margin, flat_margin, 0.0001..=10.0);
     settings.round_grace_days = off.grace_days(&table.round_grace_days, settings.round);
     settings.rate_needs = off.rate_needs(table.rate_needs.as_ref(), settings.rate_needs);
     settings.date_needs = off.date_needs(table.date_needs.as_ref(), settings.date_needs);
-    settings.same_day = off.word(&table.same_day, settings.same_day, SameDay::code);
-    settings.duplicates = off.word(&table.duplicates, settings.duplicates, Duplicates::code);
-    settings.non_detects = off.word(&table.non_detects, settings.non_detects, NonDetects::code);
+    settings.same_day =
+        off.word(Setting::SameDay, &table.same_day, settings.same_day, SameDay::code);
+    settings.duplicates =
+        off.word(Setting::Duplicates, &table.duplicates, settings.duplicates, Duplicates::code);
+    settings.non_detects =
+        off.word(Setting::NonDetects, &table.non_detects, settings.non_detects, NonDetects::code);
     let was = FlagThresholds::default();
     let flags = FlagThresholds {
         short_record_years: off.number(
+            Setting::ShortRecordYears,
             &flags.short_record_years,
             was.short_record_years,
             0.1..=100.0,
         ),
         mostly_non_detects: off.number(
+            Setting::MostlyNonDetects,
             &flags.mostly_non_detects,
             was.mostly_non_detects,
             0.0..=1.0,
         ),
-        estimated_results: off.number(&flags.estimated_results, was.estimated_results, 0.0..=1.0),
+        estimated_results: off.number(
+            Setting::EstimatedResults,
+            &flags.estimated_results,
+            was.estimated_results,
+            0.0..=1.0,
+        ),
         // The relative percent difference of two positive numbers is under 200.
-        duplicates_rpd: off.number(&flags.duplicates_rpd, was.duplicates_rpd, 0.0..=200.0),
+        duplicates_rpd: off.number(
+            Setting::DuplicatesRpd,
+            &flags.duplicates_rpd,
+            was.duplicates_rpd,
+            0.0..=200.0,
+        ),
     };
     settings.off_default = off.found;
     (settings, flags)
@@ -112,25 +113,16 @@ pub(super) fn check(file: &SiteFile, problems: &mut Problems<'_>) -> (Settings, 
 
 /// Collects what is off its default, with the reason given.
 struct Off<'p, 't> {
-    why: BTreeMap<String, At<String>>,
+    why: BTreeMap<Setting, String>,
     found: Vec<OffDefault>,
     problems: &'p mut Problems<'t>,
 }
 
 impl Off<'_, '_> {
-    /// Tells of reasons for settings that do not exist.
-    fn known_reasons(&mut self) {
-        for (key, at) in &self.why {
-            let known: Vec<_> = STATISTICAL.into_iter().chain(FREE).collect();
-            if !known.contains(&key.as_str()) {
-                self.problems.tell(at, unknown_key(key, &known));
-            }
-        }
-    }
-
     /// Notes a value off its default and asks for its reason.
     fn compare<T, V: PartialEq>(
         &mut self,
+        setting: Setting,
         at: &At<T>,
         was: &V,
         is: &V,
@@ -140,35 +132,41 @@ impl Off<'_, '_> {
             return;
         }
         let (was, is) = (shown(was), shown(is));
-        // The key by itself is the last part of the shown one.
-        let Some(key) = STATISTICAL.into_iter().find(|key| at.key.ends_with(&format!(" {key}")))
-        else {
-            return;
-        };
-        match self.why.get(key) {
+        match self.why.get(&setting) {
             Some(why) => {
-                let why = why.value.clone();
-                self.found.push(OffDefault { key: key.to_owned(), was, is, why });
+                let (key, why) = (setting.code().to_owned(), why.clone());
+                self.found.push(OffDefault { key, was, is, why });
             }
-            None => self.problems.tell(at, ProblemKind::NoReason { key, was, is }),
+            None => {
+                let key = setting.code();
+                self.problems.tell(at, ProblemKind::NoReason { key, was, is });
+            }
         }
     }
 
-    fn number(&mut self, key: &Option<At<f64>>, was: f64, range: RangeInclusive<f64>) -> f64 {
+    fn number(
+        &mut self,
+        setting: Setting,
+        key: &Option<At<f64>>,
+        was: f64,
+        range: RangeInclusive<f64>,
+    ) -> f64 {
         let Some(at) = key else { return was };
-        within(at, &range, self.problems);
-        self.compare(at, &was, &at.value, f64::to_string);
+        if within(at, &range, self.problems) {
+            self.compare(setting, at, &was, &at.value, f64::to_string);
+        }
         at.value
     }
 
     fn word<T: Copy + PartialEq + Debug>(
         &mut self,
+        setting: Setting,
         key: &Option<At<T>>,
         was: T,
         code: impl Fn(T) -> &'static str,
     ) -> T {
         let Some(at) = key else { return was };
-        self.compare(at, &was, &at.value, |word| code(*word).to_owned());
+        self.compare(setting, at, &was, &at.value, |word| code(*word).to_owned());
         at.value
     }
 
@@ -177,9 +175,10 @@ impl Off<'_, '_> {
         let most = round.most_grace_days();
         let was = Settings::default().round_grace_days.min(most);
         let Some(at) = key else { return was };
-        within(at, &(0..=u64::from(most)), self.problems);
         let is = u32::try_from(at.value).unwrap_or(most);
-        self.compare(at, &was, &is, u32::to_string);
+        if within(at, &(0..=u64::from(most)), self.problems) {
+            self.compare(Setting::RoundGraceDays, at, &was, &is, u32::to_string);
+        }
         is
     }
 
@@ -190,7 +189,7 @@ impl Off<'_, '_> {
             dates: self.count(&at.value.dates, was.dates),
             detects: self.count(&at.value.detects, was.detects),
         };
-        self.compare(at, &was, &is, RateNeeds::to_string);
+        self.compare(Setting::RateNeeds, at, &was, &is, RateNeeds::to_string);
         is
     }
 
@@ -204,7 +203,7 @@ impl Off<'_, '_> {
             years: copy(&at.value.years).unwrap_or(was.years),
             detects: self.count(&at.value.detects, was.detects),
         };
-        self.compare(at, &was, &is, DateNeeds::to_string);
+        self.compare(Setting::DateNeeds, at, &was, &is, DateNeeds::to_string);
         is
     }
 

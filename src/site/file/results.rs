@@ -1,12 +1,10 @@
 //! `[[results]]` as written.
 
-use std::collections::BTreeMap;
-
 use super::super::delivery::{
     Column, DateOrder, Decimal, Encoding, Layout, SampleType, SerialDates, Sigma,
 };
 use super::super::written::table::{Entry, Open, table, table_schema};
-use super::super::written::{At, FromToml, Header, Need, OneChar, Problems};
+use super::super::written::{At, FromToml, Header, Keyed, Need, OneChar, Problems};
 
 table! {
     /// How the results files that match a pattern are read. Blocks stand in order of delivery.
@@ -22,7 +20,7 @@ table! {
         /// The character between cells, where it should not be found out.
         separator = "separator": OneChar;
         /// The file's header for each of our columns: { result = "Conc.", well = "Bore" }.
-        columns = "columns": BTreeMap<Column, At<String>>;
+        columns = "columns": Keyed<Column, String>;
         /// The order of day and month, where the files do not prove it.
         date_order = "date-order": DateOrder;
         /// Whether years of two digits are read, 70 to 99 as 19xx and 00 to 69 as 20xx. Default
@@ -40,7 +38,7 @@ table! {
         /// What the uncertainty column holds.
         uncertainty = "uncertainty": Sigma;
         /// The files' own words for sample types: { "7" = "duplicate" }.
-        sample_types = "sample-types": BTreeMap<String, At<SampleType>>;
+        sample_types = "sample-types": Keyed<String, SampleType>;
         /// Not built yet. To what stage the files were validated, and by whom.
         validation = "validation": String;
     }

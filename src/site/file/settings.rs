@@ -1,10 +1,8 @@
 //! `[site]`, `[settings]` and `[flags]` as written.
 
-use std::collections::BTreeMap;
-
-use super::super::choices::{Duplicates, NonDetects, RoundLength, SameDay};
+use super::super::choices::{Duplicates, NonDetects, RoundLength, SameDay, Setting};
 use super::super::written::table::{Entry, Open, table, table_schema};
-use super::super::written::{At, Day, FromToml, Header, Need, Problems};
+use super::super::written::{At, Day, FromToml, Header, Keyed, Need, Problems};
 
 table! {
     /// What the site is.
@@ -56,7 +54,7 @@ table! {
         /// Not built yet. Types of limit columns in the order in which they are preferred.
         limit_order = "limit-order": Vec<At<String>>;
         /// The reason for each statistical setting or threshold off its default, by its key.
-        why = "why": BTreeMap<String, At<String>>;
+        why = "why": Keyed<Setting, String>;
     }
 }
 
@@ -83,7 +81,7 @@ table! {
 }
 
 table! {
-    /// Thresholds of flags. Each one off its default needs its reason in why of [settings].
+    /// Thresholds of flags. Each one off its default needs its reason in why of the settings.
     FlagsTable {
         /// A record shorter than this many years is short. Default 4.
         short_record_years = "short-record-years": f64;

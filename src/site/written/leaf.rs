@@ -1,7 +1,6 @@
 //! Values without keys of their own: texts, numbers, dates, units, concentrations.
 
 use std::borrow::Cow;
-use std::collections::BTreeMap;
 
 use chrono::{Datelike, NaiveDate};
 use schemars::{JsonSchema, Schema, SchemaGenerator, json_schema};
@@ -10,7 +9,6 @@ use toml::de::{DeFloat, DeInteger, DeValue};
 use crate::terms::{Concentration, Unit, UnitText};
 
 use super::super::problem::ProblemKind;
-use super::table::{Header, element, inside};
 use super::{At, FromToml, Problems};
 
 /// The years a date may have: results and goals of a monitored site lie well within.
@@ -72,7 +70,7 @@ impl FromToml for String {
         };
         let text = text.trim();
         if text.is_empty() {
-            problems.tell(at, ProblemKind::Empty { wants: "a text" });
+            problems.tell(at, ProblemKind::Empty { wants: "write a text" });
             return None;
         }
         let breaks = ['\n', '\r', '\t'];
@@ -135,7 +133,9 @@ impl FromToml for u64 {
         };
         let number = integer(whole).and_then(|whole| Self::try_from(whole).ok());
         if number.is_none() {
-            let wants = "a whole number that is not negative".to_owned();
+            let negative = whole.as_str().starts_with('-');
+            let wants = if negative { "a whole number that is not negative" } else { "smaller" };
+            let wants = wants.to_owned();
             problems.tell(at, ProblemKind::OutOfRange { found: whole.to_string(), wants });
         }
         number
@@ -230,76 +230,5 @@ impl FromToml for OneChar {
                 None
             }
         }
-    }
-}
-
-impl<T: FromToml> FromToml for Vec<At<T>> {
-    const WANTS: &'static str = "a list in square brackets";
-    const HEADER: Header = match T::HEADER {
-        Header::Key => Header::Key,
-        Header::Table | Header::Tables => Header::Tables,
-    };
-
-    /// Elements that cannot be read are told and left out.
-    fn from_toml(value: &DeValue<'_>, at: &At<()>, problems: &mut Problems<'_>) -> Option<Self> {
-        let Some(list) = value.as_array() else {
-            let tables = "written in blocks that each begin with this line in [[ ]]";
-            let wants = if at.key.starts_with("[[") && !at.key.contains("]] ") {
-                tables
-            } else {
-                Self::WANTS
-            };
-            problems.wrong_type(at, wants, value);
-            return None;
-        };
-        if list.is_empty() {
-            problems.tell(at, ProblemKind::Empty { wants: "at least one element" });
-        }
-        let mut read = Self::new();
-        for (index, item) in list.iter().enumerate() {
-            let place =
-                At { line: problems.line(&item.span()), key: element(&at.key, index), value: () };
-            if let Some(value) = T::from_toml(item.get_ref(), &place, problems) {
-                read.push(place.with(value));
-            }
-        }
-        Some(read)
-    }
-}
-
-/// A table's key that is data: a header, a code, a setting.
-pub trait MapKey: Ord + Sized {
-    /// Reads the key, or tells what is wrong with it.
-    fn from_key(key: &str, at: &At<()>, problems: &mut Problems<'_>) -> Option<Self>;
-}
-
-impl MapKey for String {
-    fn from_key(key: &str, at: &At<()>, problems: &mut Problems<'_>) -> Option<Self> {
-        Self::from_toml(&DeValue::String(Cow::Borrowed(key)), at, problems)
-    }
-}
-
-impl<K: MapKey, T: FromToml> FromToml for BTreeMap<K, At<T>> {
-    const WANTS: &'static str = "a table in braces, such as { name = \"value\" }";
-
-    fn from_toml(value: &DeValue<'_>, at: &At<()>, problems: &mut Problems<'_>) -> Option<Self> {
-        let Some(table) = value.as_table() else {
-            problems.wrong_type(at, Self::WANTS, value);
-            return None;
-        };
-        let mut read = Self::new();
-        for (key, item) in table {
-            let place = At {
-                line: problems.line(&key.span()),
-                key: inside(&at.key, key.get_ref()),
-                value: (),
-            };
-            let name = K::from_key(key.get_ref(), &place, problems);
-            let item = T::from_toml(item.get_ref(), &place, problems);
-            if let (Some(name), Some(item)) = (name, item) {
-                read.insert(name, place.with(item));
-            }
-        }
-        Some(read)
     }
 }

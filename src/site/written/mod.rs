@@ -4,10 +4,13 @@
 //! read here instead, by [`FromToml`]. A value that cannot be read is told and becomes `None`;
 //! reading goes on.
 
-pub mod leaf;
 pub mod table;
+pub mod leaf;
+pub mod list;
+pub mod keyed;
 
-pub use leaf::{Amount, Day, MapKey, OneChar, UnitWritten};
+pub use keyed::{Keyed, MapKey};
+pub use leaf::{Amount, Day, OneChar, UnitWritten};
 pub use table::{Header, Need};
 
 use std::borrow::Cow;
@@ -96,10 +99,7 @@ impl<'t> Problems<'t> {
 
     /// Notes a problem at a line, or of the whole file.
     pub fn note(&mut self, line: Option<usize>, key: String, kind: ProblemKind) {
-        let problem = Problem { path: self.path.to_owned(), line, key, kind };
-        if !self.found.contains(&problem) {
-            self.found.push(problem);
-        }
+        self.found.push(Problem { path: self.path.to_owned(), line, key, kind });
     }
 
     /// Notes that a value has another type than is wanted.

@@ -8,7 +8,7 @@ use crate::ledger::Outcome;
 use crate::words::caution::caution;
 use crate::words::clean::{shell_word, shown, shown_short};
 use crate::words::fate;
-use crate::words::layout::{Align, Lines};
+use crate::words::layout::{Align, HARD_SPACE, Lines};
 use crate::words::number::{count, counted};
 
 /// Longest text of a cell that an example quotes.
@@ -117,9 +117,10 @@ fn not_used(lines: &mut Lines, facts: &CheckFacts<'_>) {
         }
         let total = count(account::total(facts.run, outcome));
         lines.heading(&format!("{total} {}", fate::outcome(outcome)));
+        let gap = format!("{HARD_SPACE}{HARD_SPACE}");
         for reason in reasons {
             let what = fate::reason(reason.outcome, &reason.reason);
-            lines.hanging(&format!("{}  {what} [{}]", count(reason.records), shown(&reason.reason)), 2, 6);
+            lines.hanging(&format!("{}{gap}{what} [{}]", count(reason.records), shown(&reason.reason)), 2, 6);
             let found = facts
                 .examples
                 .iter()
@@ -148,5 +149,5 @@ fn example(row: &LedgerRow) -> String {
         .collect();
     let detail =
         if row.detail.is_empty() { String::new() } else { format!(" ({})", shown(&row.detail)) };
-    format!("{place}  {}{detail}", whose.join("  "))
+    format!("{place} {}{detail}", whose.join(", "))
 }

@@ -86,7 +86,7 @@ pub fn first(lines: &mut Lines, findings: &Findings) {
 
 /// One series: its name, level against limit, rate with interval, date with interval, doubts.
 fn entry(lines: &mut Lines, findings: &Findings, series: &SeriesFinding) {
-    lines.hanging(&series_name(&series.key, &findings.site), 2, 4);
+    lines.strong(&series_name(&series.key, &findings.site), 2);
     lines.hanging(&level(series), 4, 6);
     let rate = series_sentence::rate(series, findings.run.confidence).unwrap_or_else(|| {
         series.why_no_rate.map_or_else(

@@ -9,8 +9,10 @@ pub mod review;
 pub mod check;
 pub mod show;
 pub mod show_values;
+pub mod begun;
 pub mod explained;
 
+pub use begun::begun;
 pub use check::{CheckFacts, check, examples};
 pub use explained::{explain, index};
 pub use review::review;
@@ -45,7 +47,7 @@ pub fn heading(what: &str, run: &RunFacts, site: &SiteFacts) -> String {
     format!("{what}: {}, {round}as of {}", shown(name), iso(run.as_of))
 }
 
-/// A series as a line names it: `MW-3  Benzene (dissolved, depth 12 m)`, with the site where it is
+/// A series as a line names it: `MW-3, Benzene (dissolved, depth 12 m)`, with the site where it is
 /// not the run's only one.
 #[must_use]
 pub fn series_name(key: &SeriesKey, site: &SiteFacts) -> String {
@@ -53,7 +55,7 @@ pub fn series_name(key: &SeriesKey, site: &SiteFacts) -> String {
     if key.site != site.name && !key.site.is_empty() {
         name.push_str(&format!("{}: ", shown(&key.site)));
     }
-    name.push_str(&format!("{}  {}", shown(&key.well), shown(&key.analyte)));
+    name.push_str(&format!("{}, {}", shown(&key.well), shown(&key.analyte)));
     let depth = key.depth.as_deref().map(|depth| format!("depth {}", shown(depth)));
     let parts: Vec<String> =
         key.fraction.map(|f| f.code().to_owned()).into_iter().chain(depth).collect();

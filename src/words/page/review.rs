@@ -31,13 +31,13 @@ pub fn review(findings: &Findings, options: &PageOptions<'_>) -> String {
     lines.heading("What was read");
     account::read(&mut lines, &findings.run);
     account::set_aside(&mut lines, &findings.run, REASONS_SHOWN);
-    account::notes(&mut lines, &findings.notes);
     verdicts(&mut lines, findings);
     first::first(&mut lines, findings);
     if let Some(chance) = first::by_chance(findings) {
         lines.blank();
         lines.paragraph(&chance, 0);
     }
+    account::notes(&mut lines, &findings.notes);
     lines.blank();
     if let Some(folder) = options.folder {
         lines.line(&format!("Written to  {}", shown(folder)));
