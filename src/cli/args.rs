@@ -16,7 +16,7 @@ use clap::{Args as ClapArgs, Parser, Subcommand, ValueEnum, ValueHint};
     version,
     max_term_width = 100,
     arg_required_else_help = true,
-    after_help = "Examples:\n  ebbwell review demo-wells\n  ebbwell show demo-wells MW-2 TCE\n  \
+    after_help = "Examples:\n  ebbwell review demo-wells\n  ebbwell show demo-wells MW-6 TCE\n  \
                   ebbwell new my-site --template chlorinated-solvents\n\nExit status: 0 done; \
                   1 something named by --fail-on was found; 2 wrong usage; 3 an input could not \
                   be read; 4 the site file is invalid; 5 an output would overwrite what the \
@@ -75,8 +75,8 @@ pub enum Command {
         fail_on: Vec<String>,
     },
     /// One series in full: its values, where each came from, the fit and its flags.
-    #[command(after_help = "Examples:\n  ebbwell show demo-wells MW-2 TCE\n  \
-                            ebbwell show demo-wells MW-4 Chromium --fraction dissolved")]
+    #[command(after_help = "Examples:\n  ebbwell show demo-wells MW-6 TCE\n  \
+                            ebbwell show demo-wells MW-5 7440-47-3 --fraction total")]
     Show {
         /// A site folder, a site.toml, or a results file.
         #[arg(value_hint = ValueHint::AnyPath)]

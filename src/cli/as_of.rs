@@ -12,9 +12,8 @@ pub fn as_of(text: &str) -> Option<NaiveDate> {
         return None;
     }
     let year: i32 = year.parse().ok()?;
-    let number = |digits: &str, most: u32| {
-        digits.parse::<u32>().ok().filter(|n| (1..=most).contains(n))
-    };
+    let number =
+        |digits: &str, most: u32| digits.parse::<u32>().ok().filter(|n| (1..=most).contains(n));
     let last_month = match part.as_bytes() {
         [] if !text.contains('-') => 12,
         [b'H' | b'h', _] => 6 * number(&part[1..], 2)?,

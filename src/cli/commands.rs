@@ -2,9 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-use ebbwell::deliver::{
-    NewSiteError, check_json, explain_json, new_site, show_json, summary_json,
-};
+use ebbwell::deliver::{NewSiteError, check_json, explain_json, new_site, show_json, summary_json};
 use ebbwell::findings::{Findings, SeriesFinding};
 use ebbwell::run::{Error, Job, Kind, Ran, run};
 use ebbwell::site::{Fraction, WellMatch, schema, template};
@@ -138,13 +136,7 @@ fn warn_kept(ran: &Ran, voice: Voice) {
     }
 }
 
-fn review_page(
-    ran: &Ran,
-    sites: &[PathBuf],
-    how: &HowArgs,
-    named: &FailOn,
-    voice: Voice,
-) -> Exit {
+fn review_page(ran: &Ran, sites: &[PathBuf], how: &HowArgs, named: &FailOn, voice: Voice) -> Exit {
     warn_kept(ran, voice);
     if how.json {
         voice.result(&summary_json(&ran.findings));

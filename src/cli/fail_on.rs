@@ -22,9 +22,8 @@ pub fn fail_on(words: &[String]) -> Result<FailOn, String> {
                     .iter()
                     .map(|verdict| verdict.code())
                     .chain(FlagCode::ALL.iter().map(|flag| flag.code()));
-                let near = nearest(word, known).map_or_else(String::new, |near| {
-                    format!("; the nearest is {near}")
-                });
+                let near = nearest(word, known)
+                    .map_or_else(String::new, |near| format!("; the nearest is {near}"));
                 return Err(format!(
                     "--fail-on {word:?} is neither a verdict nor a flag{near}. `ebbwell explain` \
                      lists both"
@@ -39,9 +38,10 @@ impl FailOn {
     /// Whether any series has one of the named verdicts or flags.
     pub fn found_in(&self, findings: &Findings) -> bool {
         findings.series.iter().any(|series| {
-            let flagged = series.flags.iter().any(|flag| {
-                flag.standing == Standing::Raised && self.flags.contains(&flag.code)
-            });
+            let flagged = series
+                .flags
+                .iter()
+                .any(|flag| flag.standing == Standing::Raised && self.flags.contains(&flag.code));
             flagged || self.verdicts.contains(&series.verdict)
         })
     }

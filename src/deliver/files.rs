@@ -31,10 +31,7 @@ impl<'a> OutFile<'a> {
     }
 
     /// A file whose content is made while it is written.
-    pub fn written(
-        name: &str,
-        write: impl FnOnce(&mut dyn Write) -> io::Result<()> + 'a,
-    ) -> Self {
+    pub fn written(name: &str, write: impl FnOnce(&mut dyn Write) -> io::Result<()> + 'a) -> Self {
         Self { name: name.to_owned(), content: Content::Written(Box::new(write)) }
     }
 }

@@ -20,5 +20,7 @@ pub use new_site::{NewSiteError, new_site};
 pub use page_json::{check_json, explain_json, show_json};
 pub use run_json::run_json;
 pub use summary_json::summary_json;
-pub use tables::{csv_text, csv_text_back, flags_csv, ledger_csv, summary_csv, used_csv, wells_csv};
+pub use tables::{
+    csv_text, csv_text_back, flags_csv, ledger_csv, summary_csv, used_csv, wells_csv,
+};
 pub use write::{OutDir, Owner, WriteError, Written, may_write};

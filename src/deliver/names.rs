@@ -77,7 +77,8 @@ fn hashed(stem: &str, key: &SeriesKey) -> String {
         // No text holds a NUL that a file could keep, so parts cannot run into each other.
         hash.update([0]);
     }
-    let hex: String = hash.finalize().iter().take(HASH_CHARS / 2).map(|b| format!("{b:02x}")).collect();
+    let hex: String =
+        hash.finalize().iter().take(HASH_CHARS / 2).map(|b| format!("{b:02x}")).collect();
     let room = LONGEST - HASH_CHARS - 1;
     let head: String = stem.chars().take(room).collect();
     format!("{head}-{hex}")

@@ -24,9 +24,12 @@ pub fn summary_json(findings: &Findings) -> String {
         ("site", site(&findings.site)),
         ("caution", Json::Text(caution::caution(&findings.site))),
         ("notes", notes(&findings.notes)),
-        ("verdict_counts", Json::Object(
-            counts.into_iter().map(|(verdict, n)| (verdict.code(), Json::count(n))).collect(),
-        )),
+        (
+            "verdict_counts",
+            Json::Object(
+                counts.into_iter().map(|(verdict, n)| (verdict.code(), Json::count(n))).collect(),
+            ),
+        ),
         ("rates_tested", Json::count(tested)),
         ("rising_by_chance", Json::Number(by_chance)),
         ("charts_left_out", Json::count(chosen.left_out)),

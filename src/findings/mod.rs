@@ -6,7 +6,9 @@ pub mod run;
 pub mod columns;
 
 pub use columns::{Cell, Column};
-pub use run::{DecisionFacts, FileFacts, InputHash, LedgerRow, Note, OutcomeCount, RunFacts, SiteFacts};
+pub use run::{
+    DecisionFacts, FileFacts, InputHash, LedgerRow, Note, OutcomeCount, RunFacts, SiteFacts,
+};
 pub use series::{BandPoint, DuplicateFinding, Fitted, SeriesFinding, UsedValue};
 pub use wells::WellFinding;
 

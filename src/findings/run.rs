@@ -3,8 +3,8 @@
 use chrono::NaiveDate;
 use serde::Serialize;
 
-pub use crate::ledger::{FileFacts, LedgerRow, MappingFacts, OutcomeCount};
 use crate::ledger::Told;
+pub use crate::ledger::{FileFacts, LedgerRow, MappingFacts, OutcomeCount};
 use crate::terms::Effort;
 
 /// The run itself.
@@ -89,4 +89,3 @@ pub struct Note {
     /// How many records it concerns.
     pub records: usize,
 }
-

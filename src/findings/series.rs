@@ -2,10 +2,12 @@
 
 use chrono::NaiveDate;
 
-pub use crate::terms::BandPoint;
 use crate::series::SeriesKey;
 use crate::site::Role;
-use crate::terms::{Flag, Method, Pace, PerYear, Reading, Span, Unit, Verdict, WhyNoDate, WhyNoRate};
+pub use crate::terms::BandPoint;
+use crate::terms::{
+    Flag, Method, Pace, PerYear, Reading, Span, Unit, Verdict, WhyNoDate, WhyNoRate,
+};
 
 /// One series; a field that does not apply is `None`, never zero.
 #[derive(Clone, Debug)]

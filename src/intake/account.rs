@@ -2,10 +2,11 @@
 
 use chrono::NaiveDate;
 use polars::prelude::{
-    Column, DataFrame, IntoLazy, PolarsError, PolarsResult, UInt32Chunked, col, len,
+    Column, DataFrame, IntoLazy, PolarsResult, UInt32Chunked, col, len,
 };
 
 use super::Tidy;
+use super::frame::FrameError;
 use super::names::{date_of, fraction_of};
 use super::texts::Code;
 use crate::ledger::{Fate, LedgerRow, OutcomeCount, RecordId, Told};
@@ -43,8 +44,8 @@ impl Tidy {
     /// The newest date among records that can be used, with the record that bears it.
     ///
     /// # Errors
-    /// A polars error, which would be a fault of this program.
-    pub fn newest(&self) -> PolarsResult<Option<Newest>> {
+    /// [`FrameError`], which would be a fault of this program.
+    pub fn newest(&self) -> Result<Option<Newest>, FrameError> {
         let days = self.frame.column("day")?.i32()?;
         let newest = self
             .ledger
@@ -65,8 +66,8 @@ impl Tidy {
     /// Records by outcome and reason, in the order of the outcomes, most first.
     ///
     /// # Errors
-    /// A polars error, which would be a fault of this program.
-    pub fn counts(&self, site: &Site) -> PolarsResult<Vec<OutcomeCount>> {
+    /// [`FrameError`], which would be a fault of this program.
+    pub fn counts(&self, site: &Site) -> Result<Vec<OutcomeCount>, FrameError> {
         let places: Vec<u32> = (0..self.ledger.len()).filter_map(|at| at.try_into().ok()).collect();
         self.counts_of(&places, site)
     }
@@ -74,8 +75,12 @@ impl Tidy {
     /// The same for some records.
     ///
     /// # Errors
-    /// A polars error, which would be a fault of this program.
-    pub fn counts_of(&self, records: &[RecordId], site: &Site) -> PolarsResult<Vec<OutcomeCount>> {
+    /// [`FrameError`], which would be a fault of this program.
+    pub fn counts_of(
+        &self,
+        records: &[RecordId],
+        site: &Site,
+    ) -> Result<Vec<OutcomeCount>, FrameError> {
         let mut kinds: Vec<Fate> = records.iter().map(|&r| settled(self.ledger.fate(r))).collect();
         kinds.sort_unstable();
         kinds.dedup();
@@ -111,12 +116,12 @@ impl Tidy {
     /// Every record as a line of ledger.csv, in record order. `detail` words what was told.
     ///
     /// # Errors
-    /// A polars error, which would be a fault of this program.
+    /// [`FrameError`], which would be a fault of this program.
     pub fn ledger_rows<'a>(
         &'a self,
         site: &'a Site,
         detail: &'a dyn Fn(&[&Told]) -> String,
-    ) -> Result<impl Iterator<Item = LedgerRow> + 'a, PolarsError> {
+    ) -> Result<impl Iterator<Item = LedgerRow> + 'a, FrameError> {
         let frame = &self.frame;
         let lines = frame.column("line")?.u64()?;
         let days = frame.column("day")?.i32()?;

@@ -38,9 +38,8 @@ pub fn date(text: &str, form: DateForm) -> DateText {
     }
     let Some([a, b, c]) = parts(day) else { return DateText::Unreadable };
     let made = |year: Option<i32>, month: &str, day: &str| {
-        let date = year.and_then(|year| {
-            NaiveDate::from_ymd_opt(year, month.parse().ok()?, day.parse().ok()?)
-        });
+        let date = year
+            .and_then(|year| NaiveDate::from_ymd_opt(year, month.parse().ok()?, day.parse().ok()?));
         match date.filter(|date| YEARS.contains(&chrono::Datelike::year(date))) {
             Some(date) => DateText::Date(date, time.to_owned()),
             None => DateText::Unreadable,
@@ -169,7 +168,11 @@ mod tests {
             serials: SerialDates::From1900,
         };
         // 45292 is 2024-01-01 in the 1900 date system of spreadsheets (common practice).
-        assert!(matches!(date("45292", form), DateText::Date(d, _) if d.to_string() == "2024-01-01"));
-        assert!(matches!(date("3/5/24", form), DateText::Date(d, _) if d.to_string() == "2024-03-05"));
+        assert!(
+            matches!(date("45292", form), DateText::Date(d, _) if d.to_string() == "2024-01-01")
+        );
+        assert!(
+            matches!(date("3/5/24", form), DateText::Date(d, _) if d.to_string() == "2024-03-05")
+        );
     }
 }

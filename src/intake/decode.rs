@@ -56,9 +56,7 @@ fn undeclared(bytes: &[u8]) -> Result<Decoded, NotText> {
         return Err(NotText::Binary { byte });
     }
     match std::str::from_utf8(bytes) {
-        Ok(text) => {
-            Ok(Decoded { text: text.to_owned(), encoding: "utf-8", guessed_at_line: None })
-        }
+        Ok(text) => Ok(Decoded { text: text.to_owned(), encoding: "utf-8", guessed_at_line: None }),
         Err(_) => {
             let first = bytes.iter().position(|byte| !byte.is_ascii());
             let before = &bytes[..first.unwrap_or(bytes.len())];
@@ -92,7 +90,10 @@ mod tests {
     #[test]
     fn marks_are_taken_off_and_utf_16_is_read() {
         assert_eq!(decode(b"\xEF\xBB\xBFwell", None).map(|d| d.text), Ok("well".into()));
-        let le: Vec<u8> = [0xFF, 0xFE].into_iter().chain("w\u{b5}".encode_utf16().flat_map(u16::to_le_bytes)).collect();
+        let le: Vec<u8> = [0xFF, 0xFE]
+            .into_iter()
+            .chain("w\u{b5}".encode_utf16().flat_map(u16::to_le_bytes))
+            .collect();
         let decoded = decode(&le, None);
         assert_eq!(decoded.as_ref().map(|d| d.text.as_str()), Ok("w\u{b5}"));
         assert_eq!(decoded.map(|d| d.encoding), Ok("utf-16le"));

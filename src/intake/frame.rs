@@ -5,6 +5,20 @@ use polars::prelude::{Column, DataFrame, PolarsError};
 use super::rows::{Kind, Row};
 use crate::terms::{Reading, Unit};
 
+/// The frame could not be built or read, which is a fault of this program: its columns have one
+/// length and known types.
+#[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
+#[error("{why}")]
+pub struct FrameError {
+    why: String,
+}
+
+impl From<PolarsError> for FrameError {
+    fn from(error: PolarsError) -> Self {
+        Self { why: error.to_string() }
+    }
+}
+
 /// The frame's number for a record without a unit.
 pub(crate) const NO_UNIT: u8 = u8::MAX;
 /// The frame's number for an ordinary sample.

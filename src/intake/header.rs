@@ -33,22 +33,32 @@ const WORDS: [(Column, &[&str]); 22] = [
     (
         Column::Well,
         &[
-            "well", "location", "station", "monitoringpoint", "samplelocation", "samplepoint",
-            "monitoringlocation", "monitoringlocationidentifier", "locationidentifier",
+            "well",
+            "location",
+            "station",
+            "monitoringpoint",
+            "samplelocation",
+            "samplepoint",
+            "monitoringlocation",
+            "monitoringlocationidentifier",
+            "locationidentifier",
         ],
     ),
     (
         Column::Analyte,
         &[
-            "analyte", "parameter", "chemical", "compound", "constituent", "characteristic",
+            "analyte",
+            "parameter",
+            "chemical",
+            "compound",
+            "constituent",
+            "characteristic",
             "resultcharacteristic",
         ],
     ),
     (
         Column::Date,
-        &[
-            "date", "sampledate", "sampled", "datesampled", "collectiondate", "activitystartdate",
-        ],
+        &["date", "sampledate", "sampled", "datesampled", "collectiondate", "activitystartdate"],
     ),
     (
         Column::Result,
@@ -56,40 +66,57 @@ const WORDS: [(Column, &[&str]); 22] = [
     ),
     (
         Column::Unit,
-        &["unit", "units", "uom", "resultunit", "resultmeasuremeasureunitcode", "resultmeasureunit"],
+        &[
+            "unit",
+            "units",
+            "uom",
+            "resultunit",
+            "resultmeasuremeasureunitcode",
+            "resultmeasureunit",
+        ],
     ),
     (Column::Site, &["site", "facility"]),
     (Column::Cas, &["cas", "casrn", "resultcasnumber"]),
     (
         Column::Fraction,
         &[
-            "fraction", "totaldissolved", "filtered", "resultsamplefractiontext",
+            "fraction",
+            "totaldissolved",
+            "filtered",
+            "resultsamplefractiontext",
             "resultsamplefraction",
         ],
     ),
     (
         Column::Qualifier,
         &[
-            "qualifier", "qualifiers", "flag", "labqualifier", "qual", "remark",
-            "measurequalifiercode", "resultmeasurequalifiercode", "resultqualifier",
+            "qualifier",
+            "qualifiers",
+            "flag",
+            "labqualifier",
+            "qual",
+            "remark",
+            "measurequalifiercode",
+            "resultmeasurequalifiercode",
+            "resultqualifier",
         ],
     ),
     (Column::DetectionLimit, &["detectionlimit", "dl", "mdl", "lod", "methoddetectionlimit"]),
-    (
-        Column::ReportingLimit,
-        &["reportinglimit", "rl", "pql", "mrl", "loq", "quantitationlimit"],
-    ),
+    (Column::ReportingLimit, &["reportinglimit", "rl", "pql", "mrl", "loq", "quantitationlimit"]),
     (Column::SampleType, &["sampletype", "activitytypecode", "activitytype"]),
     (
         Column::SampleId,
-        &["sampleid", "samplenumber", "sampleno", "activityidentifier", "activityactivityidentifier"],
+        &[
+            "sampleid",
+            "samplenumber",
+            "sampleno",
+            "activityidentifier",
+            "activityactivityidentifier",
+        ],
     ),
     (Column::Depth, &["depth", "sampledepth"]),
     (Column::Lab, &["lab", "laboratory", "laboratoryname", "labinfoname"]),
-    (
-        Column::Time,
-        &["time", "sampletime", "activitystarttimetime", "activitystarttime"],
-    ),
+    (Column::Time, &["time", "sampletime", "activitystarttimetime", "activitystarttime"]),
     (Column::Uncertainty, &["uncertainty", "countinguncertainty"]),
     (Column::Basis, &["basis", "methodspeciationname", "resultmethodspeciation"]),
     (
@@ -230,7 +257,8 @@ mod tests {
 
     #[test]
     fn usual_words_match_with_case_blanks_and_punctuation_folded() {
-        let found = columns("Sample Location ID,Parameter Name,Date_Sampled,Result (ug/L),CAS No.,RL");
+        let found =
+            columns("Sample Location ID,Parameter Name,Date_Sampled,Result (ug/L),CAS No.,RL");
         let expected = [
             (Column::Well, 0),
             (Column::Analyte, 1),

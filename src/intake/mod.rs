@@ -19,6 +19,7 @@ pub mod table;
 pub mod value;
 pub mod names;
 pub mod record;
+pub mod marks;
 pub mod rows;
 pub mod repeats;
 pub mod depths;
@@ -26,5 +27,6 @@ pub mod frame;
 pub mod tidy;
 pub mod account;
 
+pub use frame::FrameError;
 pub use source::{Found, Sources};
 pub use tidy::{Tidy, tidy};

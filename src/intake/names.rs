@@ -100,11 +100,8 @@ impl Names {
         let other_site = !written_site.is_empty() && !site.is_named(written_site);
         let well = well_name(site, cell(Column::Well), day, told);
         let pair = (texts.code(cell(Column::Cas)), texts.code(cell(Column::Analyte)));
-        let analyte = self
-            .analytes
-            .entry(pair)
-            .or_insert_with(|| analyte(site, pair, texts))
-            .clone();
+        let analyte =
+            self.analytes.entry(pair).or_insert_with(|| analyte(site, pair, texts)).clone();
         told.extend(analyte.told.iter().cloned());
         let medium = cell(Column::Medium);
         let wanted = analyte.listed.and_then(|at| site.analytes[at].medium.as_deref());
@@ -130,12 +127,7 @@ impl Names {
 }
 
 /// The well's own name, by alias where the date says so.
-fn well_name(
-    site: &Site,
-    written: &str,
-    day: Option<NaiveDate>,
-    told: &mut Vec<Told>,
-) -> String {
+fn well_name(site: &Site, written: &str, day: Option<NaiveDate>, told: &mut Vec<Told>) -> String {
     match site.well_of(written, day) {
         _ if written.is_empty() => String::new(),
         WellMatch::Listed(well) => well.name.clone(),
@@ -227,7 +219,8 @@ pub fn unite_spellings(rows: &mut [super::rows::Row], texts: &Texts) {
     let mut spellings: HashMap<(Code, String), HashMap<Code, usize>> = HashMap::new();
     let identity = |row: &super::rows::Row| {
         let name = folded(texts.text(row.analyte));
-        let cas = if row.cas == 0 { cas_of_name.get(&name).copied().flatten() } else { Some(row.cas) };
+        let cas =
+            if row.cas == 0 { cas_of_name.get(&name).copied().flatten() } else { Some(row.cas) };
         match cas {
             Some(cas) => (cas, String::new()),
             None => (0, name),
@@ -240,9 +233,9 @@ pub fn unite_spellings(rows: &mut [super::rows::Row], texts: &Texts) {
     let shown: HashMap<(Code, String), Code> = spellings
         .into_iter()
         .filter_map(|(identity, counts)| {
-            let best = counts.into_iter().max_by(|a, b| {
-                a.1.cmp(&b.1).then_with(|| texts.text(b.0).cmp(texts.text(a.0)))
-            })?;
+            let best = counts
+                .into_iter()
+                .max_by(|a, b| a.1.cmp(&b.1).then_with(|| texts.text(b.0).cmp(texts.text(a.0))))?;
             Some((identity, best.0))
         })
         .collect();

@@ -96,7 +96,9 @@ mod tests {
 
     #[test]
     fn what_is_no_number_is_refused() {
-        for text in ["1e400", "NaN", "inf", "5,1,2", "1,234", "", "-", ".", "1e", "0x10", "1 2", "1e-400"] {
+        for text in
+            ["1e400", "NaN", "inf", "5,1,2", "1,234", "", "-", ".", "1e", "0x10", "1 2", "1e-400"]
+        {
             assert_eq!(number(text, POINT), None, "{text}");
         }
         assert_eq!(number("0.000", POINT), Some(0.0));

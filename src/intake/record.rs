@@ -2,11 +2,10 @@
 
 use chrono::NaiveDate;
 
-use super::condition::{Condition, condition};
 use super::date::{DateText, date};
 use super::names::{Names, day_number};
 use super::number::number;
-use super::qualifier::{Code as QualifierCode, Strictest, codes, usual};
+use super::qualifier::Strictest;
 use super::rows::{Dilution, Kind, Row, Written};
 use super::sample_type::{non_result, sample_type};
 use super::split::Line;
@@ -15,7 +14,7 @@ use super::texts::Texts;
 use super::value::{ResultCell, Said, reading, result_cell};
 use crate::ledger::told::Expected;
 use crate::ledger::{Fate, NonResult, QualityControl, SetAside, Told};
-use crate::site::{Column, DecisionKind, Meaning, ResultsRule, SampleType, Site};
+use crate::site::{Column, DecisionKind, ResultsRule, SampleType, Site};
 use crate::terms::Unit;
 
 /// Reads the records of one table.
@@ -38,15 +37,6 @@ pub struct Read {
     pub fate: Fate,
     /// What is told.
     pub told: Vec<Told>,
-}
-
-/// What the marks of a record say together.
-struct Marks {
-    strictest: Option<Strictest>,
-    estimated: bool,
-    dilution: Dilution,
-    unknown: Option<Fate>,
-    decided_by: Option<u16>,
 }
 
 impl RecordReader<'_> {
@@ -107,6 +97,10 @@ impl RecordReader<'_> {
                 }
             }
         };
+        if !fate.gives_a_row() {
+            // A blank or another site's sample is not used, so its well needs no word.
+            told.retain(|told| !matches!(told, Told::WellNotListed { .. }));
+        }
         Read { row, fate, told }
     }
 
@@ -228,89 +222,6 @@ impl RecordReader<'_> {
         read.map(|_| ())
     }
 
-    /// What qualifiers, detection condition and status say.
-    fn marks(
-        &self,
-        line: &Line,
-        row: &Row,
-        day: Option<NaiveDate>,
-        texts: &Texts,
-        told: &mut Vec<Told>,
-    ) -> Result<Marks, Fate> {
-        let mut marks =
-            Marks {
-                strictest: None,
-                estimated: false,
-                dilution: Dilution::None,
-                unknown: None,
-                decided_by: None,
-            };
-        let status = self.table.cell(line, Column::Status);
-        if status.eq_ignore_ascii_case("rejected") {
-            return Err(Fate::SetAside(SetAside::Rejected));
-        }
-        let decided = self.decided(DecisionKind::UseQualifier, row, day, texts).and_then(|place| {
-            Some((place, self.site.decisions[usize::from(place)].means?))
-        });
-        let qualifier = texts.text(row.written.qualifier);
-        for code in codes(qualifier) {
-            let legend = self.legend(|q| q.code.as_deref() == Some(code));
-            match legend.map_or_else(|| usual(code), QualifierCode::Means) {
-                QualifierCode::Means(meaning) => marks.add(meaning, code, told),
-                QualifierCode::NonDetectEstimated => {
-                    marks.add(Meaning::NonDetect, code, told);
-                    marks.estimated = true;
-                }
-                QualifierCode::HoldingTime => told.push(Told::HoldingTime),
-                QualifierCode::NeedsLegend => match decided {
-                    Some((place, meaning)) => {
-                        marks.add(meaning, code, told);
-                        marks.decided_by = Some(place);
-                        told.push(Told::Decision {
-                            id: self.site.decisions[usize::from(place)].id.clone(),
-                        });
-                    }
-                    None => {
-                        told.push(Told::UnknownQualifier { code: code.to_owned() });
-                        marks.hold(Strictest::Unknown, SetAside::QualifierNeedsLegend);
-                        if code.eq_ignore_ascii_case("e") {
-                            marks.dilution = Dilution::OverCalibration;
-                        }
-                    }
-                },
-            }
-        }
-        let words = self.table.cell(line, Column::DetectionCondition);
-        if !words.is_empty() {
-            let legend = self.legend(|q| q.condition.as_deref() == Some(words));
-            match legend.map_or_else(|| condition(words), Condition::Means) {
-                Condition::Means(meaning) => marks.add(meaning, "", told),
-                Condition::Gap => return Err(Fate::NonResult(NonResult::NotReported)),
-                Condition::NeedsLegend => {
-                    told.push(Told::UnknownCondition { condition: words.to_owned() });
-                    marks.hold(Strictest::Unknown, SetAside::ConditionNeedsLegend);
-                }
-            }
-        }
-        match marks.strictest {
-            Some(Strictest::Rejected) => Err(Fate::SetAside(SetAside::Rejected)),
-            _ => Ok(marks),
-        }
-    }
-
-    /// The site file's meaning of a code or condition in this file.
-    fn legend(&self, is: impl Fn(&crate::site::Qualifier) -> bool) -> Option<Meaning> {
-        let name = self.table.name.as_str();
-        let leaf = name.rsplit('/').next().unwrap_or(name);
-        let here = |patterns: &[String]| {
-            patterns.is_empty()
-                || patterns.iter().any(|pattern| {
-                    glob::Pattern::new(pattern).is_ok_and(|p| p.matches(name) || p.matches(leaf))
-                })
-        };
-        self.site.qualifiers.iter().find(|q| is(q) && here(&q.files)).map(|q| q.means)
-    }
-
     /// The result's unit; a non-detect without one takes its limit's.
     fn unit(
         &self,
@@ -355,13 +266,7 @@ impl RecordReader<'_> {
     }
 
     /// A positive limit in the result's unit; one that cannot be read is told and left out.
-    fn limit(
-        &self,
-        line: &Line,
-        column: Column,
-        unit: Unit,
-        told: &mut Vec<Told>,
-    ) -> Option<f64> {
+    fn limit(&self, line: &Line, column: Column, unit: Unit, told: &mut Vec<Told>) -> Option<f64> {
         let text = self.table.cell(line, column);
         if text.is_empty() {
             return None;
@@ -376,51 +281,5 @@ impl RecordReader<'_> {
             });
         }
         read.filter(|limit| *limit > 0.0).and_then(|limit| own.convert(limit, unit))
-    }
-
-    /// The first decision of a kind that names this record.
-    fn decided(
-        &self,
-        kind: DecisionKind,
-        row: &Row,
-        day: Option<NaiveDate>,
-        texts: &Texts,
-    ) -> Option<u16> {
-        let holds = |list: &[String], text: &str| list.is_empty() || list.iter().any(|x| x == text);
-        let place = self.site.decisions.iter().position(|decision| {
-            decision.kind == kind
-                && holds(&decision.wells, texts.text(row.well))
-                && holds(&decision.analytes, texts.text(row.analyte))
-                && holds(&decision.samples, texts.text(row.written.sample_id))
-                && decision.from.is_none_or(|from| day.is_some_and(|day| from <= day))
-                && decision.to.is_none_or(|to| day.is_some_and(|day| day <= to))
-                && decision.file.as_ref().is_none_or(|file| {
-                    self.table.name == *file || self.table.name.ends_with(&format!("/{file}"))
-                })
-                && (decision.records.is_empty() || decision.records.contains(&row.line))
-        })?;
-        u16::try_from(place).ok()
-    }
-}
-
-impl Marks {
-    fn add(&mut self, meaning: Meaning, code: &str, told: &mut Vec<Told>) {
-        let strictest = Strictest::of(meaning);
-        self.strictest = Some(self.strictest.map_or(strictest, |before| before.min(strictest)));
-        self.estimated |= matches!(meaning, Meaning::Estimated | Meaning::Blank);
-        if meaning == Meaning::Blank {
-            told.push(Told::InBlank);
-        }
-        if meaning == Meaning::Informational && code.eq_ignore_ascii_case("d") {
-            self.dilution = Dilution::Diluted;
-        }
-        if meaning == Meaning::AboveRange && code.eq_ignore_ascii_case("e") {
-            self.dilution = Dilution::OverCalibration;
-        }
-    }
-
-    fn hold(&mut self, strictest: Strictest, why: SetAside) {
-        self.strictest = Some(self.strictest.map_or(strictest, |before| before.min(strictest)));
-        self.unknown.get_or_insert(Fate::SetAside(why));
     }
 }

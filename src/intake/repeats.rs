@@ -70,10 +70,8 @@ fn deliveries(
     let row = |record: RecordId| &rows[record as usize];
     let mut standing: Vec<RecordId> = Vec::new();
     for &record in records {
-        let open = matches!(
-            ledger.fate(record),
-            Fate::Candidate | Fate::SetAside(SetAside::Rejected)
-        );
+        let open =
+            matches!(ledger.fate(record), Fate::Candidate | Fate::SetAside(SetAside::Rejected));
         if !open {
             continue;
         }

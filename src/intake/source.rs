@@ -60,10 +60,8 @@ pub fn collect(sources: &Sources, site: &Site) -> Collected {
         Sources::Folder(folder) => folder_files(folder, &mut out),
         Sources::Files(paths) => shortest_tails(paths),
     };
-    let mut ordered: Vec<(usize, String, PathBuf)> = named
-        .into_iter()
-        .map(|(name, path)| (rule_of(&name, &site.results), name, path))
-        .collect();
+    let mut ordered: Vec<(usize, String, PathBuf)> =
+        named.into_iter().map(|(name, path)| (rule_of(&name, &site.results), name, path)).collect();
     ordered.sort();
     for (rule, name, path) in ordered {
         let ending = path.extension().and_then(|e| e.to_str()).map(str::to_ascii_lowercase);
@@ -148,7 +146,8 @@ fn folder_files(folder: &Path, out: &mut Collected) -> Vec<(String, PathBuf)> {
             let entry = match entry {
                 Ok(entry) => entry,
                 Err(error) => {
-                    out.refused.push(SourceError::Io { name: name.clone(), why: error.to_string() });
+                    out.refused
+                        .push(SourceError::Io { name: name.clone(), why: error.to_string() });
                     continue;
                 }
             };
@@ -182,7 +181,8 @@ fn shortest_tails(paths: &[PathBuf]) -> Vec<(String, PathBuf)> {
     (0..paths.len())
         .map(|at| {
             let alone = |length: &usize| {
-                (0..paths.len()).all(|other| other == at || tail(other, *length) != tail(at, *length))
+                (0..paths.len())
+                    .all(|other| other == at || tail(other, *length) != tail(at, *length))
             };
             let length = (1..=most).find(alone).unwrap_or(most);
             (tail(at, length).trim_start_matches('/').to_owned(), paths[at].clone())

@@ -73,7 +73,8 @@ fn best_split(text: &str, rule: &ResultsRule) -> Result<(Lines, Mapping), TableP
         let lines = split(first_line, separator).lines;
         lines.first().map(|l| l.cells.iter().map(str::to_owned).collect()).unwrap_or_default()
     };
-    let matched = |separator: u8| mapping(headers(separator).iter().map(String::as_str), &rule.columns);
+    let matched =
+        |separator: u8| mapping(headers(separator).iter().map(String::as_str), &rule.columns);
     let separator = rule.separator.unwrap_or_else(|| {
         let score = |separator: u8| match matched(separator) {
             Ok(mapping) => (usize::MAX - mapping.lacks().len(), headers(separator).len()),
@@ -95,16 +96,16 @@ fn best_split(text: &str, rule: &ResultsRule) -> Result<(Lines, Mapping), TableP
         }
     })?;
     let lacks = mapping.lacks();
-    if lacks.is_empty() { Ok((split, mapping)) } else { Err(TableProblem::NoHeader { lacks, found }) }
+    if lacks.is_empty() {
+        Ok((split, mapping))
+    } else {
+        Err(TableProblem::NoHeader { lacks, found })
+    }
 }
 
 /// Two columns of one meaning may stand beside each other only where they never differ; two
 /// qualifier columns are both read.
-fn agreement(
-    lines: &[Line],
-    mapping: &Mapping,
-    header: &StringRecord,
-) -> Result<(), TableProblem> {
+fn agreement(lines: &[Line], mapping: &Mapping, header: &StringRecord) -> Result<(), TableProblem> {
     let cell = |line: &Line, at: usize| line.cells.get(at).unwrap_or_default().trim().to_owned();
     for (&column, others) in mapping.also.iter().filter(|(c, _)| **c != Column::Qualifier) {
         let first = mapping.cells[&column];

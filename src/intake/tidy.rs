@@ -1,9 +1,9 @@
 //! All files together: read, settled, and put into one frame.
 
-use polars::prelude::{DataFrame, PolarsError};
+use polars::prelude::DataFrame;
 
 use super::depths;
-use super::frame::frame;
+use super::frame::{FrameError, frame};
 use super::names::{Names, unite_spellings};
 use super::record::RecordReader;
 use super::repeats;
@@ -43,12 +43,12 @@ pub struct Tidy {
 /// interrupted).
 ///
 /// # Errors
-/// A polars error if the frame cannot be built, which would be a fault of this program.
+/// [`FrameError`] if the frame cannot be built, which would be a fault of this program.
 pub fn tidy(
     sources: &Sources,
     site: &Site,
     between: &dyn Fn(&str) -> bool,
-) -> Result<Option<Tidy>, PolarsError> {
+) -> Result<Option<Tidy>, FrameError> {
     let Collected { found, refused, ignored } = collect(sources, site);
     let mut unreadable: Vec<Unreadable> = refused
         .into_iter()
@@ -101,7 +101,10 @@ pub fn tidy(
     let decided = (0..site.decisions.len())
         .map(|place| {
             let by = |row: &&Row| {
-                [row.excluded_by, row.qualified_by].into_iter().flatten().any(|by| usize::from(by) == place)
+                [row.excluded_by, row.qualified_by]
+                    .into_iter()
+                    .flatten()
+                    .any(|by| usize::from(by) == place)
             };
             rows.iter().filter(by).count()
         })

@@ -83,7 +83,11 @@ pub fn reading(said: &Said) -> Judged {
         }
         ResultCell::Empty => aside(SetAside::NoResult),
         ResultCell::Number(v) if said.strictest == Some(Strictest::AboveRange) => {
-            if positive(v) { (Ok(Reading::Above(v)), None) } else { aside(SetAside::AboveRange) }
+            if positive(v) {
+                (Ok(Reading::Above(v)), None)
+            } else {
+                aside(SetAside::AboveRange)
+            }
         }
         ResultCell::Number(v) => measured(v, said),
     }
@@ -133,7 +137,9 @@ fn detectable_level(said: &Said) -> Option<f64> {
 
 #[cfg(test)]
 mod tests {
-    use super::{NumberForm, Reading, ResultCell, Said, Strictest, Told, Unit, reading, result_cell};
+    use super::{
+        NumberForm, Reading, ResultCell, Said, Strictest, Told, Unit, reading, result_cell,
+    };
     use crate::ledger::{Fate, SetAside};
     use crate::site::{Decimal, Sigma};
 

@@ -82,11 +82,8 @@ fn fill(facts: &Facts<'_>, fit: &Fit, judged: &Judged, out: &mut Shown) {
     };
     let (reach, earliest, latest) =
         (date(projection.reach), date(projection.earliest), date(projection.latest));
-    let (mean, exceed, exceed_earliest) = (
-        date(projection.reach_mean),
-        date(projection.exceed),
-        date(projection.exceed_earliest),
-    );
+    let (mean, exceed, exceed_earliest) =
+        (date(projection.reach_mean), date(projection.exceed), date(projection.exceed_earliest));
     out.beyond_calendar = beyond;
     out.exceed = exceed.and_then(Dated::date);
     out.exceed_earliest = exceed_earliest.and_then(Dated::date);

@@ -119,9 +119,8 @@ impl<'a> Facts<'a> {
     /// Zero or negative results lost, as a share of them and the dates with a value.
     #[must_use]
     pub fn low_results_lost(&self) -> f64 {
-        let in_window = |date: &&NaiveDate| {
-            self.points.window.holds(**date) && **date <= self.rules.as_of
-        };
+        let in_window =
+            |date: &&NaiveDate| self.points.window.holds(**date) && **date <= self.rules.as_of;
         let mut lost: Vec<NaiveDate> =
             self.series.low_results.iter().filter(in_window).copied().collect();
         lost.sort_unstable();

@@ -20,9 +20,9 @@ pub fn flags(facts: &Facts<'_>, judged: &Judged, shown: &Shown) -> Vec<Flag> {
     }
     flags.extend(outlier(facts, fit));
     if judged.results_deny_line {
-        let over = facts.limit().map(|limit| {
-            facts.last(4).iter().filter(|value| !value.reading.meets(limit)).count()
-        });
+        let over = facts
+            .limit()
+            .map(|limit| facts.last(4).iter().filter(|value| !value.reading.meets(limit)).count());
         #[allow(clippy::cast_precision_loss)] // a count of at most four
         let figure = over.map_or(Figure::Absent, |over| Figure::Number(over as f64));
         flags.push(Flag::fact(FlagCode::ResultsDenyLine, figure));
@@ -58,10 +58,8 @@ fn tests_disagree(facts: &Facts<'_>, fit: &Fit) -> Option<Flag> {
 
 /// An end of the reach interval that does not exist, or no interval at all.
 fn open_end(facts: &Facts<'_>, judged: &Judged, shown: &Shown) -> Option<Flag> {
-    let speaks = matches!(
-        judged.verdict,
-        Verdict::Attenuating | Verdict::Flat | Verdict::Undecided
-    );
+    let speaks =
+        matches!(judged.verdict, Verdict::Attenuating | Verdict::Flat | Verdict::Undecided);
     let projection = facts.projection?;
     if !speaks || shown.withheld.is_some() {
         return None;

@@ -37,9 +37,8 @@ pub fn stands_in_the_way(
     role: crate::site::Role,
 ) -> bool {
     let Some(limit) = facts.limit() else { return false };
-    let seen_low_enough = || {
-        facts.last(super::facts::LAST_DATES).iter().all(|value| value.reading.meets(limit))
-    };
+    let seen_low_enough =
+        || facts.last(super::facts::LAST_DATES).iter().all(|value| value.reading.meets(limit));
     if role == crate::site::Role::Background || judged.verdict == Verdict::Below {
         return false;
     }

@@ -13,10 +13,8 @@ pub fn flags(facts: &Facts<'_>) -> Vec<Flag> {
     counts(facts, &mut flags);
     let Some(span) = facts.points.span() else { return flags };
     let values = facts.values();
-    let steps: Vec<f64> = values
-        .windows(2)
-        .map(|pair| years_between(pair[0].date, pair[1].date).0)
-        .collect();
+    let steps: Vec<f64> =
+        values.windows(2).map(|pair| years_between(pair[0].date, pair[1].date).0).collect();
     // A single date covers no time and has no spacing.
     let covered = span.years().0 + median(&steps).unwrap_or_default();
     let covered = (covered * 10.0).round() / 10.0;

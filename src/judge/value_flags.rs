@@ -23,8 +23,7 @@ pub fn flags(facts: &Facts<'_>) -> Vec<Flag> {
 /// The share of detects that are estimated.
 fn estimated(facts: &Facts<'_>) -> Option<Flag> {
     let most = facts.rules.flags.estimated_results;
-    let detects: Vec<_> =
-        facts.values().into_iter().filter(|value| value.is_detect()).collect();
+    let detects: Vec<_> = facts.values().into_iter().filter(|value| value.is_detect()).collect();
     let estimated = detects.iter().filter(|value| value.estimated).count();
     #[allow(clippy::cast_precision_loss)] // counts of dates
     let share = estimated as f64 / detects.len() as f64;

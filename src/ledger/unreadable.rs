@@ -31,7 +31,9 @@ impl SourceError {
     #[must_use]
     pub fn name(&self) -> &str {
         match self {
-            Self::Io { name, .. } | Self::GivenTwice { name, .. } | Self::OtherKind { name } => name,
+            Self::Io { name, .. } | Self::GivenTwice { name, .. } | Self::OtherKind { name } => {
+                name
+            }
         }
     }
 }

@@ -100,9 +100,7 @@ impl CensoredLine {
                     likelihood = Likelihood::about(points, near);
                 }
                 Err(NoPeak::NotReached { steps }) => {
-                    return Err(NotFitted {
-                        steps: taken + steps,
-                    });
+                    return Err(NotFitted { steps: taken + steps });
                 }
             }
         }
@@ -130,9 +128,7 @@ impl CensoredLine {
             steps: taken,
         };
         let scaling = fitted.likelihood.scaling();
-        let flat = fitted
-            .profile()
-            .held_at(Target::Slope, -scaling.scaled_base_slope());
+        let flat = fitted.profile().held_at(Target::Slope, -scaling.scaled_base_slope());
         fitted.flat_fall = flat.ok_or(not_fitted)?.fall;
         Ok(fitted)
     }

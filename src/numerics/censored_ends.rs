@@ -11,9 +11,7 @@ impl CensoredLine {
     /// There is no such end, or twelve steps did not reach it.
     pub fn joint_end(&self, end: End, cut_off: f64) -> Option<f64> {
         let stretch = self.stretch(end, cut_off)?;
-        self.profile()
-            .joint(&stretch, cut_off)
-            .map(|value| self.unscaled(end, value))
+        self.profile().joint(&stretch, cut_off).map(|value| self.unscaled(end, value))
     }
 
     /// An end by the nested search alone.
@@ -22,9 +20,7 @@ impl CensoredLine {
     /// There is no such end, or no bracket was found.
     pub fn nested_end(&self, end: End, cut_off: f64) -> Option<f64> {
         let stretch = self.stretch(end, cut_off)?;
-        self.profile()
-            .nested(&stretch, cut_off)
-            .map(|value| self.unscaled(end, value))
+        self.profile().nested(&stretch, cut_off).map(|value| self.unscaled(end, value))
     }
 
     /// An end by the joint search, by the nested one where that does not arrive.
@@ -90,20 +86,8 @@ impl CensoredLine {
     /// level line through `y0`, and the best slope of the one held at the right time is zero.
     pub fn crossing(&self, y0: f64, confidence: f64) -> Crossing {
         let cut_off = self.cut_off(confidence);
-        let low = self.end(
-            End::Crossing {
-                y0,
-                side: Side::Low,
-            },
-            cut_off,
-        );
-        let high = self.end(
-            End::Crossing {
-                y0,
-                side: Side::High,
-            },
-            cut_off,
-        );
+        let low = self.end(End::Crossing { y0, side: Side::Low }, cut_off);
+        let high = self.end(End::Crossing { y0, side: Side::High }, cut_off);
         if self.flat_fall > cut_off {
             let line = self.parameters();
             Crossing::Located {
@@ -124,9 +108,7 @@ impl CensoredLine {
     fn interval(&self, confidence: f64, end: impl Fn(Side) -> End) -> Interval {
         let cut_off = self.cut_off(confidence);
         Interval {
-            low: self
-                .end(end(Side::Low), cut_off)
-                .unwrap_or(f64::NEG_INFINITY),
+            low: self.end(end(Side::Low), cut_off).unwrap_or(f64::NEG_INFINITY),
             high: self.end(end(Side::High), cut_off).unwrap_or(f64::INFINITY),
         }
     }

@@ -70,18 +70,8 @@ pub fn certain_pairs(points: Points<'_>) -> Option<CertainPairs> {
     let variance = values.skew() * times.skew() / (n * (n - 1.0) * (n - 2.0))
         + (values.squares as f64) * (times.squares as f64) / (2.0 * n * (n - 1.0));
     let s = twice_s / 2;
-    let z = if variance > 0.0 {
-        (s - s.signum()) as f64 / variance.sqrt()
-    } else {
-        0.0
-    };
-    Some(CertainPairs {
-        s,
-        undecided,
-        variance,
-        z,
-        p: normal::two_sided(z),
-    })
+    let z = if variance > 0.0 { (s - s.signum()) as f64 / variance.sqrt() } else { 0.0 };
+    Some(CertainPairs { s, undecided, variance, z, p: normal::two_sided(z) })
 }
 
 /// Sums over one matrix of scores.

@@ -133,10 +133,6 @@ pub fn farthest(points: &[Deletion]) -> Option<Farthest> {
         } else {
             0.0
         };
-        Farthest {
-            index,
-            studentized,
-            bonferroni_p: (n * one).min(1.0),
-        }
+        Farthest { index, studentized, bonferroni_p: (n * one).min(1.0) }
     })
 }

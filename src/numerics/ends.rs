@@ -107,10 +107,7 @@ impl Profile<'_> {
             }
             if decrement < SMALL_DECREMENT {
                 let fall = 2.0 * (self.highest - pass.value);
-                return Some(Constrained {
-                    fall: fall.max(0.0),
-                    slope: -2.0 * pass.by_held,
-                });
+                return Some(Constrained { fall: fall.max(0.0), slope: -2.0 * pass.by_held });
             }
         }
         None
@@ -140,13 +137,7 @@ impl Profile<'_> {
     /// After Venzon & Moolgavkar (1988), Appl. Stat. 37:87–94 [from memory]; held against
     /// [`Profile::nested`] in tests.
     pub fn joint(&self, stretch: &Stretch, cut_off: f64) -> Option<f64> {
-        let Stretch {
-            target,
-            inside,
-            outside,
-            estimate,
-            ..
-        } = *stretch;
+        let Stretch { target, inside, outside, estimate, .. } = *stretch;
         let (low, high) = (inside.min(outside), inside.max(outside));
         let mut value = stretch.start;
         let guess = self.spread.guess(target, value, self.effective);
@@ -202,12 +193,7 @@ impl Profile<'_> {
     /// # Reference
     /// The safeguard is that of Press et al., Numerical Recipes, 9.4 [from memory, written anew].
     pub fn nested(&self, stretch: &Stretch, cut_off: f64) -> Option<f64> {
-        let Stretch {
-            target,
-            mut inside,
-            estimate,
-            ..
-        } = *stretch;
+        let Stretch { target, mut inside, estimate, .. } = *stretch;
         let mut outside = stretch.outside;
         let mut value = stretch.start;
         if outside.is_infinite() {

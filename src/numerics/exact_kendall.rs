@@ -159,10 +159,7 @@ impl NullScores {
             }
         }
         let all: f64 = counts.iter().sum();
-        NullScores {
-            probability: counts.iter().map(|c| c / all).collect(),
-            reach,
-        }
+        NullScores { probability: counts.iter().map(|c| c / all).collect(), reach }
     }
 
     /// Probability that S is at most `s`.
@@ -176,13 +173,8 @@ impl NullScores {
     }
 
     fn sum(&self, wanted: impl Fn(i64) -> bool) -> f64 {
-        let chosen = (-self.reach..)
-            .zip(&self.probability)
-            .filter(|(score, _)| wanted(*score));
-        chosen
-            .map(|(_, probability)| probability)
-            .sum::<f64>()
-            .min(1.0)
+        let chosen = (-self.reach..).zip(&self.probability).filter(|(score, _)| wanted(*score));
+        chosen.map(|(_, probability)| probability).sum::<f64>().min(1.0)
     }
 }
 

@@ -20,7 +20,7 @@ const DATES_NEEDED: usize = 3;
 /// ```
 ///
 /// # Units
-/// As [`line`].
+/// As [`line()`].
 ///
 /// # Limits
 /// Dates are distinct where their times differ at all.
@@ -33,10 +33,7 @@ const DATES_NEEDED: usize = 3;
 /// Methods note 3.2: with measured values on three dates and not on a line the likelihood has one
 /// maximum; on a line it grows for ever as the scatter shrinks, unless a bound forbids it.
 pub fn measured_line(points: Points<'_>) -> Result<Line, NoLine> {
-    let measured: Vec<_> = points
-        .iter()
-        .filter(|point| point.mark == Mark::Measured)
-        .collect();
+    let measured: Vec<_> = points.iter().filter(|point| point.mark == Mark::Measured).collect();
     let dates = distinct(points.t().iter().copied());
     let measured_dates = distinct(measured.iter().map(|point| point.t));
     let on_one_date = dates == 1 || measured.len() >= DATES_NEEDED && measured_dates == 1;
@@ -47,9 +44,7 @@ pub fn measured_line(points: Points<'_>) -> Result<Line, NoLine> {
         return Err(NoLine::TooFewDates { dates });
     }
     if measured_dates < DATES_NEEDED {
-        return Err(NoLine::TooFewDetects {
-            dates: measured_dates,
-        });
+        return Err(NoLine::TooFewDetects { dates: measured_dates });
     }
     let t: Vec<f64> = measured.iter().map(|point| point.t).collect();
     let y: Vec<f64> = measured.iter().map(|point| point.y).collect();

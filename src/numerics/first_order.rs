@@ -87,9 +87,8 @@ pub fn first_order(points: Points<'_>) -> Result<FirstOrder, NoLine> {
     if points.all_measured() {
         Ok(FirstOrder::least_squares(through))
     } else {
-        let fitted = CensoredLine::fit(points).map_err(|no_peak| NoLine::NotConverged {
-            steps: no_peak.steps,
-        })?;
+        let fitted = CensoredLine::fit(points)
+            .map_err(|no_peak| NoLine::NotConverged { steps: no_peak.steps })?;
         Ok(FirstOrder::likelihood(points, fitted))
     }
 }

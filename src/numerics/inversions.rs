@@ -117,10 +117,9 @@ fn merge_list(
         } else {
             *place = right[j];
             let room = most.saturating_sub(found.len());
-            found.extend(left[i..].iter().take(room).map(|&first| FallingPair {
-                first,
-                second: right[j],
-            }));
+            found.extend(
+                left[i..].iter().take(room).map(|&first| FallingPair { first, second: right[j] }),
+            );
             j += 1;
         }
     }

@@ -67,11 +67,7 @@ pub fn mann_kendall(t: &[f64], y: &[f64]) -> Option<MannKendall> {
     let s = score(t, y);
     let (values, times) = (group_sizes(y), group_sizes(t));
     let variance = variance(n, &values, &times);
-    let z = if variance > 0.0 {
-        (s - s.signum()) as f64 / variance.sqrt()
-    } else {
-        0.0
-    };
+    let z = if variance > 0.0 { (s - s.signum()) as f64 / variance.sqrt() } else { 0.0 };
     let untied = values.len() == n && times.len() == n;
     let exact = if untied && n <= MOST_UNTIED {
         untied_at_least(n, s.abs()).map(|tail| (2.0 * tail).min(1.0))
@@ -85,11 +81,7 @@ pub fn mann_kendall(t: &[f64], y: &[f64]) -> Option<MannKendall> {
         variance,
         z,
         p: exact.unwrap_or_else(|| normal::two_sided(z)),
-        p_value: if exact.is_some() {
-            PValue::Exact
-        } else {
-            PValue::Normal
-        },
+        p_value: if exact.is_some() { PValue::Exact } else { PValue::Normal },
         tau: s as f64 / pairs,
     })
 }
@@ -121,11 +113,7 @@ pub fn falling_p(t: &[f64], y: &[f64]) -> Option<f64> {
     };
     let normal = || {
         let spread = test.variance.sqrt();
-        if spread > 0.0 {
-            normal::lower((test.s + 1) as f64 / spread)
-        } else {
-            1.0
-        }
+        if spread > 0.0 { normal::lower((test.s + 1) as f64 / spread) } else { 1.0 }
     };
     Some(exact.unwrap_or_else(normal))
 }
@@ -136,11 +124,7 @@ fn untied(t: &[f64], y: &[f64]) -> bool {
 
 /// Kendall's S: by pairs for a short series, by sorting for a long one.
 pub fn score(t: &[f64], y: &[f64]) -> i64 {
-    if y.len() < SORT_FROM {
-        brute_score(t, y)
-    } else {
-        sorted_score(t, y)
-    }
+    if y.len() < SORT_FROM { brute_score(t, y) } else { sorted_score(t, y) }
 }
 
 /// Kendall's S in O(n log n).
@@ -192,10 +176,6 @@ fn variance(n: usize, values: &[usize], times: &[usize]) -> f64 {
     let plain = (cubic(n) - sum(values, cubic) - sum(times, cubic)) / 18.0;
     let by_three = sum(values, three) * sum(times, three);
     // With two values the divisor is zero, and so is what it divides.
-    let by_three = if by_three > 0.0 {
-        by_three / (9.0 * three(n))
-    } else {
-        0.0
-    };
+    let by_three = if by_three > 0.0 { by_three / (9.0 * three(n)) } else { 0.0 };
     plain + by_three + sum(values, two) * sum(times, two) / (2.0 * two(n))
 }

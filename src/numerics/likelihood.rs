@@ -69,21 +69,14 @@ impl Likelihood {
         let guess: Line = line(points.t(), &moved)?;
         let scatter = (guess.rss / guess.n as f64).sqrt();
         let scale = if scatter > 0.0 { scatter } else { 1.0 };
-        let start = Parameters {
-            intercept: guess.intercept,
-            slope: guess.slope,
-            scale,
-        };
+        let start = Parameters { intercept: guess.intercept, slope: guess.slope, scale };
         Some(Self::about(points, start))
     }
 
     /// Scales the points about a line that is already known to be near.
     pub fn about(points: Points<'_>, near: Parameters) -> Likelihood {
         let t_centre = mean(points.t());
-        let t_unit = points
-            .t()
-            .iter()
-            .fold(0.0, |widest: f64, t| widest.max((t - t_centre).abs()));
+        let t_unit = points.t().iter().fold(0.0, |widest: f64, t| widest.max((t - t_centre).abs()));
         let scaling = Scaling {
             t_centre,
             t_unit,
@@ -101,11 +94,7 @@ impl Likelihood {
                 Mark::Above => bounds.push(Bound { u, w, side: -1.0 }),
             }
         }
-        Likelihood {
-            scaling,
-            measured,
-            bounds,
-        }
+        Likelihood { scaling, measured, bounds }
     }
 
     /// How times and values are scaled.
@@ -151,8 +140,8 @@ impl Likelihood {
     /// measured: ln a − z²/2 − ½ ln 2π   gradient −z·x + (1/a, 0, 0)   bend x·xᵀ + (1/a², 0, 0; …)
     /// below:    ln Φ(z)                 gradient m·x                  bend m(m + z)·x·xᵀ
     /// ```
-    /// where m = φ(z)/Φ(z), and above is below with −z and −x. The function is concave in (a, b, c):
-    /// it has one maximum and Newton's method finds it.
+    /// where m = φ(z)/Φ(z), and above is below with −z and −x. The function is concave in
+    /// (a, b, c): it has one maximum and Newton's method finds it.
     ///
     /// # Units
     /// Scaled, see [`Scaling`].
@@ -190,11 +179,7 @@ impl Likelihood {
             u += bent_u;
             one += tail.bend;
         }
-        Pass {
-            value,
-            gradient,
-            bend: [[ww, wu, w], [wu, uu, u], [w, u, one]],
-        }
+        Pass { value, gradient, bend: [[ww, wu, w], [wu, uu, u], [w, u, one]] }
     }
 }
 

@@ -63,16 +63,7 @@ pub fn line(t: &[f64], y: &[f64]) -> Option<Line> {
     let residual = |(t, y): (&f64, &f64)| y - y_mean - slope * (t - t_mean);
     let rss: f64 = t.iter().zip(y).map(residual).map(|e| e * e).sum();
     let intercept = y_mean - slope * t_mean;
-    let line = Line {
-        n,
-        t_mean,
-        y_mean,
-        sxx,
-        slope,
-        intercept,
-        rss,
-        tss,
-    };
+    let line = Line { n, t_mean, y_mean, sxx, slope, intercept, rss, tss };
     (slope.is_finite() && rss.is_finite() && tss.is_finite()).then_some(line)
 }
 
@@ -147,10 +138,7 @@ impl Line {
     /// Draper & Smith (1998), ch. 1. Worked example W02.
     pub fn slope_interval(&self, confidence: f64) -> Interval {
         let half = tails::student_within(confidence, self.degrees()) * self.slope_error();
-        Interval {
-            low: self.slope - half,
-            high: self.slope + half,
-        }
+        Interval { low: self.slope - half, high: self.slope + half }
     }
 
     /// The interval of the fitted (mean) value at time `t`, pointwise.
@@ -174,10 +162,7 @@ impl Line {
         let spread = (1.0 / self.n as f64 + off * off / self.sxx).sqrt();
         let half = tails::student_within(confidence, self.degrees()) * self.sd() * spread;
         let level = self.fitted(t);
-        Interval {
-            low: level - half,
-            high: level + half,
-        }
+        Interval { low: level - half, high: level + half }
     }
 
     /// The times at which the line may meet `y0`: Fieller's set.
@@ -189,8 +174,8 @@ impl Line {
     /// disc = E/(n·Sxx) · (b²·Sxx + n·d² − E)
     /// ```
     /// where `q` is the two-sided quantile of Student's t with n − 2 degrees of freedom. `A > 0`
-    /// exactly when the slope's interval excludes zero; then the set is one interval. Else it is two
-    /// rays where `disc > 0`, and every time where it is not. The root nearer zero is taken as a
+    /// exactly when the slope's interval excludes zero; then the set is one interval. Else it is
+    /// two rays where `disc > 0`, and every time where it is not. The nearer root is taken as a
     /// quotient with the farther one, so that neither loses digits when `A` is small.
     ///
     /// # Units
@@ -222,16 +207,9 @@ impl Line {
         let (first, last) = (self.t_mean + far.min(near), self.t_mean + far.max(near));
         if a > 0.0 {
             let estimate = self.t_mean + d / self.slope;
-            Crossing::Located {
-                estimate,
-                low: first,
-                high: last,
-            }
+            Crossing::Located { estimate, low: first, high: last }
         } else {
-            Crossing::TwoRays {
-                before: first,
-                after: last,
-            }
+            Crossing::TwoRays { before: first, after: last }
         }
     }
 }

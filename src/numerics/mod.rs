@@ -7,7 +7,8 @@
 //!
 //! | question | answered by |
 //! |---|---|
-//! | how fast does it fall, and how sure is that | [`first_order()`], [`FirstOrder::slope_interval`] |
+//! | how fast does it fall | [`first_order()`] |
+//! | how sure is that | [`FirstOrder::slope_interval`] |
 //! | where does the line stand at a time | [`FirstOrder::level_interval`] |
 //! | when does the line meet a level | [`FirstOrder::crossing`] |
 //! | is there any monotonic trend | [`mann_kendall`]; with non-detects [`certain_pairs()`] |

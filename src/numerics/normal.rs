@@ -199,28 +199,16 @@ pub fn lower_tail(z: f64) -> LowerTail {
         let sum = FAR_TAIL[0] + rest;
         let slope = -z / sum;
         let ln = -0.5 * z * z - HALF_LN_TWO_PI - (-z).ln() + rest.ln_1p();
-        return LowerTail {
-            ln,
-            slope,
-            bend: slope * (z * rest / sum),
-        };
+        return LowerTail { ln, slope, bend: slope * (z * rest / sum) };
     }
     if z <= 0.0 {
         let ratio = mills_ratio(-z);
         let slope = 1.0 / ratio;
         let ln = -0.5 * z * z - HALF_LN_TWO_PI + ratio.ln();
-        return LowerTail {
-            ln,
-            slope,
-            bend: slope * (slope + z),
-        };
+        return LowerTail { ln, slope, bend: slope * (slope + z) };
     }
     let density = density(z);
     let over = density * mills_ratio(z);
     let slope = density / (1.0 - over);
-    LowerTail {
-        ln: (-over).ln_1p(),
-        slope,
-        bend: slope * (slope + z),
-    }
+    LowerTail { ln: (-over).ln_1p(), slope, bend: slope * (slope + z) }
 }

@@ -87,12 +87,7 @@ pub fn climb(likelihood: &Likelihood, start: Olsen) -> Result<Peak, NoPeak> {
             return Err(NoPeak::OutOfScale { at, steps });
         }
         if decrement < SMALL_DECREMENT {
-            return Ok(Peak {
-                at,
-                pass,
-                steps,
-                decrement,
-            });
+            return Ok(Peak { at, pass, steps, decrement });
         }
     }
     Err(NoPeak::NotReached { steps: MOST_STEPS })
@@ -116,11 +111,7 @@ pub enum NoPeak {
 }
 
 fn moved(at: Olsen, step: [f64; 3], share: f64) -> Olsen {
-    Olsen {
-        a: at.a + share * step[0],
-        b: at.b + share * step[1],
-        c: at.c + share * step[2],
-    }
+    Olsen { a: at.a + share * step[0], b: at.b + share * step[1], c: at.c + share * step[2] }
 }
 
 /// Solves a symmetric positive definite system of three, by Cholesky's method.

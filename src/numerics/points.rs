@@ -51,16 +51,9 @@ impl<'a> Points<'a> {
     /// [`BadPoints`] names the first thing wrong.
     pub fn new(t: &'a [f64], y: &'a [f64], mark: &'a [Mark]) -> Result<Self, BadPoints> {
         if t.len() != y.len() || t.len() != mark.len() {
-            return Err(BadPoints::Lengths {
-                times: t.len(),
-                values: y.len(),
-                marks: mark.len(),
-            });
+            return Err(BadPoints::Lengths { times: t.len(), values: y.len(), marks: mark.len() });
         }
-        let bad = t
-            .iter()
-            .zip(y)
-            .position(|(t, y)| !(t.is_finite() && y.is_finite()));
+        let bad = t.iter().zip(y).position(|(t, y)| !(t.is_finite() && y.is_finite()));
         match bad {
             Some(index) => Err(BadPoints::NotFinite { index }),
             None => Ok(Points { t, y, mark }),
@@ -104,11 +97,7 @@ impl<'a> Points<'a> {
 
     /// The points in turn.
     pub fn iter(&self) -> impl Iterator<Item = Point> + use<'a> {
-        self.t
-            .iter()
-            .zip(self.y)
-            .zip(self.mark)
-            .map(|((&t, &y), &mark)| Point { t, y, mark })
+        self.t.iter().zip(self.y).zip(self.mark).map(|((&t, &y), &mark)| Point { t, y, mark })
     }
 }
 

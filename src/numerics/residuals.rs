@@ -28,10 +28,7 @@ pub fn lag_one(values: &[f64]) -> Option<f64> {
     }
     let centre = mean(values);
     let square: f64 = values.iter().map(|x| (x - centre) * (x - centre)).sum();
-    let product: f64 = values
-        .windows(2)
-        .map(|w| (w[0] - centre) * (w[1] - centre))
-        .sum();
+    let product: f64 = values.windows(2).map(|w| (w[0] - centre) * (w[1] - centre)).sum();
     (square > 0.0).then(|| product / square)
 }
 
@@ -59,9 +56,6 @@ pub fn durbin_watson(residuals: &[f64]) -> Option<f64> {
         return None;
     }
     let square: f64 = residuals.iter().map(|e| e * e).sum();
-    let steps: f64 = residuals
-        .windows(2)
-        .map(|w| (w[1] - w[0]) * (w[1] - w[0]))
-        .sum();
+    let steps: f64 = residuals.windows(2).map(|w| (w[1] - w[0]) * (w[1] - w[0])).sum();
     (square > 0.0).then(|| steps / square)
 }

@@ -63,11 +63,7 @@ impl Scaling {
         let a = self.y_unit / line.scale;
         let level = (line.intercept + line.slope * self.t_centre - self.base) / self.y_unit;
         let tilt = (line.slope - self.base_slope) * self.t_unit / self.y_unit;
-        Olsen {
-            a,
-            b: -a * tilt,
-            c: -a * level,
-        }
+        Olsen { a, b: -a * tilt, c: -a * level }
     }
 
     /// The line in the caller's units that has these Olsen's parameters: the inverse of
@@ -75,11 +71,7 @@ impl Scaling {
     pub fn line(&self, at: Olsen) -> Parameters {
         let slope = self.base_slope - at.b / at.a * self.y_unit / self.t_unit;
         let level = self.base - at.c / at.a * self.y_unit;
-        Parameters {
-            intercept: level - slope * self.t_centre,
-            slope,
-            scale: self.y_unit / at.a,
-        }
+        Parameters { intercept: level - slope * self.t_centre, slope, scale: self.y_unit / at.a }
     }
 
     /// Slope of the guessed line in scaled values per scaled time.

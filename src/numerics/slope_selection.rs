@@ -36,11 +36,7 @@ struct Sorted {
 impl PairSlopes {
     /// Looks at the points; for many, only sorts them.
     pub fn new(t: &[f64], y: &[f64]) -> PairSlopes {
-        if y.len() <= PAIRS_UP_TO {
-            Self::by_pairs(t, y)
-        } else {
-            Self::by_counting(t, y)
-        }
+        if y.len() <= PAIRS_UP_TO { Self::by_pairs(t, y) } else { Self::by_counting(t, y) }
     }
 
     /// Computes every slope: n(n−1)/2 numbers.
@@ -54,10 +50,7 @@ impl PairSlopes {
                 }
             }
         }
-        PairSlopes {
-            count: slopes.len() as u64,
-            how: How::All(slopes),
-        }
+        PairSlopes { count: slopes.len() as u64, how: How::All(slopes) }
     }
 
     /// Sorts the points by time and keeps the slopes implicit: memory stays of order n.
@@ -67,9 +60,7 @@ impl PairSlopes {
         let sorted_t: Vec<f64> = order.iter().map(|&i| t[i]).collect();
         let sorted_y: Vec<f64> = order.iter().map(|&i| y[i]).collect();
         let n = y.len() as u64;
-        let tied = sorted_t
-            .chunk_by(|x, y| x == y)
-            .map(|group| group.len() as u64);
+        let tied = sorted_t.chunk_by(|x, y| x == y).map(|group| group.len() as u64);
         let count = n * n.saturating_sub(1) / 2 - tied.map(|u| u * (u - 1) / 2).sum::<u64>();
         // The steepest slopes are between neighbouring times.
         let (mut lowest, mut highest) = (f64::INFINITY, f64::NEG_INFINITY);
@@ -84,12 +75,7 @@ impl PairSlopes {
             before = Some((group[0], bottom, top));
             start += group.len();
         }
-        let how = How::Sorted(Sorted {
-            t: sorted_t,
-            y: sorted_y,
-            lowest,
-            highest,
-        });
+        let how = How::Sorted(Sorted { t: sorted_t, y: sorted_y, lowest, highest });
         PairSlopes { how, count }
     }
 
@@ -129,15 +115,11 @@ impl PairSlopes {
                 let (_, at, above) = slopes.select_nth_unstable_by(place, f64::total_cmp);
                 let at = *at;
                 let next = above.iter().copied().min_by(f64::total_cmp);
-                Some(Ranked {
-                    at,
-                    next: next.unwrap_or(at),
-                })
+                Some(Ranked { at, next: next.unwrap_or(at) })
             }
-            How::Sorted(sorted) => Some(Ranked {
-                at: sorted.ranked(rank),
-                next: sorted.ranked(following),
-            }),
+            How::Sorted(sorted) => {
+                Some(Ranked { at: sorted.ranked(rank), next: sorted.ranked(following) })
+            }
         }
     }
 }
@@ -174,11 +156,7 @@ impl Sorted {
         left.sort_unstable_by(f64::total_cmp);
         let place = (rank - below_low - 1) as usize;
         // More than a few are left only where they are equal but for rounding: any will do.
-        let place = if left.len() as u64 > few {
-            0
-        } else {
-            place.min(left.len().max(1) - 1)
-        };
+        let place = if left.len() as u64 > few { 0 } else { place.min(left.len().max(1) - 1) };
         left.get(place).copied().unwrap_or(low)
     }
 
@@ -191,11 +169,7 @@ impl Sorted {
 
     /// Values over the line of slope `m` through the origin, in order of time.
     fn over(&self, m: f64) -> Vec<f64> {
-        self.t
-            .iter()
-            .zip(&self.y)
-            .map(|(t, y)| y - m * (t - self.t[0]))
-            .collect()
+        self.t.iter().zip(&self.y).map(|(t, y)| y - m * (t - self.t[0])).collect()
     }
 
     /// Equal times make no pair: sorted upwards, they make no inversion either.

@@ -75,12 +75,9 @@ impl CensoredLine {
             estimate,
         };
         match end {
-            End::Slope(side) => Some(outward(
-                Target::Slope,
-                spread.slope,
-                spread.slope_variance,
-                side,
-            )),
+            End::Slope(side) => {
+                Some(outward(Target::Slope, spread.slope, spread.slope_variance, side))
+            }
             End::Level { t, side } => {
                 let u = self.likelihood.scaling().u(t);
                 let variance = spread.level_variance
@@ -120,34 +117,21 @@ impl CensoredLine {
             .into_iter()
             .find(|angle| low < *angle && *angle < high)
             .unwrap_or(0.5 * (low + high));
-        Some(Stretch {
-            target,
-            inside,
-            outside,
-            start,
-            estimate,
-        })
+        Some(Stretch { target, inside, outside, start, estimate })
     }
 
     /// The best scale of the level line through `y0`, by Newton's method in one unknown.
     fn constant(&self, over: f64, base_slope: f64) -> Option<Constant> {
         let spread = &self.spread;
         let (lift, tilt) = (over - spread.level, -base_slope - spread.slope);
-        let (level, both, slope) = (
-            spread.level_variance,
-            spread.covariance,
-            spread.slope_variance,
-        );
+        let (level, both, slope) =
+            (spread.level_variance, spread.covariance, spread.slope_variance);
         let wald = (lift * lift * slope - 2.0 * lift * tilt * both + tilt * tilt * level)
             / (level * slope - both * both);
         let mut theta = spread.a / (1.0 + wald / self.effective).sqrt();
         let (mut low, mut high) = (0.0, f64::INFINITY);
         for _ in 0..MOST_STEPS {
-            let at = Olsen {
-                a: theta,
-                b: theta * base_slope,
-                c: -theta * over,
-            };
+            let at = Olsen { a: theta, b: theta * base_slope, c: -theta * over };
             let pass = self.likelihood.pass(at);
             let x = [1.0, base_slope, -over];
             let dot = |row: [f64; 3]| row[0] * x[0] + row[1] * x[1] + row[2] * x[2];

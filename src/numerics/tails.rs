@@ -131,11 +131,7 @@ pub fn student_quantile(tail: f64, degrees: f64) -> f64 {
     let rest = inv_beta_reg(0.5 * degrees, 0.5, 2.0 * tail);
     let start = (degrees * (1.0 - rest) / rest).sqrt();
     // Beyond one half the start may be 0 or infinite; the normal quantile is a start as well.
-    let start = if start.is_finite() {
-        start
-    } else {
-        normal_quantile(tail)
-    };
+    let start = if start.is_finite() { start } else { normal_quantile(tail) };
     polished_student(start, tail, degrees)
 }
 
@@ -175,11 +171,7 @@ pub fn student_within(confidence: f64, degrees: f64) -> f64 {
 /// # Reference
 /// Abramowitz & Stegun (1964), 26.4.19. Checked against `tests/reference/tails.csv`.
 pub fn chi_squared_upper(x: f64, degrees: f64) -> f64 {
-    if x > 0.0 {
-        gamma_ur(0.5 * degrees, 0.5 * x)
-    } else {
-        1.0
-    }
+    if x > 0.0 { gamma_ur(0.5 * degrees, 0.5 * x) } else { 1.0 }
 }
 
 /// Probability that an F variable is over `f`.
@@ -200,11 +192,7 @@ pub fn chi_squared_upper(x: f64, degrees: f64) -> f64 {
 /// # Reference
 /// Abramowitz & Stegun (1964), 26.6.2. Checked against `tests/reference/tails.csv`.
 pub fn fisher_upper(f: f64, above: f64, below: f64) -> f64 {
-    if f > 0.0 {
-        beta_reg(0.5 * below, 0.5 * above, below / (below + above * f))
-    } else {
-        1.0
-    }
+    if f > 0.0 { beta_reg(0.5 * below, 0.5 * above, below / (below + above * f)) } else { 1.0 }
 }
 
 fn guarded(tail: f64) -> f64 {

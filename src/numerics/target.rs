@@ -132,10 +132,7 @@ impl Spread {
                 cos * (slope + base_slope) - sin * (level - over)
             }
         };
-        Guess {
-            lean,
-            theta: self.a / (1.0 + off * off / variance / effective).sqrt(),
-        }
+        Guess { lean, theta: self.a / (1.0 + off * off / variance / effective).sqrt() }
     }
 }
 
@@ -143,18 +140,12 @@ impl Held {
     /// The line with the target at `value`, leaning as guessed.
     pub fn new(target: Target, value: f64, lean: f64) -> Held {
         match target {
-            Target::Slope => Held {
-                p: [-value, -lean],
-                q: [0.0, 1.0],
-                dp: [-1.0, 0.0],
-                dq: [0.0, 0.0],
-            },
-            Target::Level { u } => Held {
-                p: [-lean, lean * u - value],
-                q: [1.0, -u],
-                dp: [0.0, -1.0],
-                dq: [0.0, 0.0],
-            },
+            Target::Slope => {
+                Held { p: [-value, -lean], q: [0.0, 1.0], dp: [-1.0, 0.0], dq: [0.0, 0.0] }
+            }
+            Target::Level { u } => {
+                Held { p: [-lean, lean * u - value], q: [1.0, -u], dp: [0.0, -1.0], dq: [0.0, 0.0] }
+            }
             Target::Crossing { over, base_slope } => {
                 let (sin, cos) = value.sin_cos();
                 Held {
@@ -181,11 +172,8 @@ impl Held {
         let (gradient, bend) = (pass.gradient, pass.bend);
         let by_theta = [1.0, self.p[0], self.p[1]];
         let by_kappa = [0.0, -self.q[0], -self.q[1]];
-        let by_value = [
-            0.0,
-            theta * self.dp[0] - kappa * self.dq[0],
-            theta * self.dp[1] - kappa * self.dq[1],
-        ];
+        let by_value =
+            [0.0, theta * self.dp[0] - kappa * self.dq[0], theta * self.dp[1] - kappa * self.dq[1]];
         let bent_theta = times(bend, by_theta);
         let bent_kappa = times(bend, by_kappa);
         HeldPass {

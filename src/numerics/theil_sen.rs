@@ -46,16 +46,9 @@ pub fn theil_sen(t: &[f64], y: &[f64], confidence: f64) -> Option<TheilSen> {
     let mut slopes = PairSlopes::new(t, y);
     let pairs = slopes.count();
     let slope = slopes.ranked(pairs.div_ceil(2))?;
-    let slope = if pairs % 2 == 1 {
-        slope.at
-    } else {
-        0.5 * (slope.at + slope.next)
-    };
+    let slope = if pairs % 2 == 1 { slope.at } else { 0.5 * (slope.at + slope.next) };
     let spread = tails::normal_quantile(0.5 * (1.0 - confidence)) * test.variance.sqrt();
-    let (first, last) = (
-        0.5 * (pairs as f64 - spread),
-        0.5 * (pairs as f64 + spread) + 1.0,
-    );
+    let (first, last) = (0.5 * (pairs as f64 - spread), 0.5 * (pairs as f64 + spread) + 1.0);
     let interval = if first >= 1.0 {
         let low = between_ranks(&mut slopes, first)?;
         let high = between_ranks(&mut slopes, last)?;
@@ -64,12 +57,7 @@ pub fn theil_sen(t: &[f64], y: &[f64], confidence: f64) -> Option<TheilSen> {
         None
     };
     let intercept = median(y)? - slope * median(t)?;
-    Some(TheilSen {
-        slope,
-        intercept,
-        interval,
-        pairs,
-    })
+    Some(TheilSen { slope, intercept, interval, pairs })
 }
 
 /// The slope at a rank that need not be whole.
@@ -110,9 +98,5 @@ pub fn median(values: &[f64]) -> Option<f64> {
     if values.len() % 2 == 1 {
         return Some(middle);
     }
-    below
-        .iter()
-        .copied()
-        .max_by(f64::total_cmp)
-        .map(|lower| 0.5 * (lower + middle))
+    below.iter().copied().max_by(f64::total_cmp).map(|lower| 0.5 * (lower + middle))
 }

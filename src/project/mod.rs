@@ -58,7 +58,8 @@ pub fn project(fit: &Fit, limit: f64) -> Projection {
     let mut out = Projection::default();
     match fit.sign() {
         RateSign::Falling => {
-            if let Crossing::Located { estimate, low, high } = fit.line.crossing(y0, fit.confidence) {
+            if let Crossing::Located { estimate, low, high } = fit.line.crossing(y0, fit.confidence)
+            {
                 out.reach = Some(estimate);
                 out.earliest = Some(low);
                 out.latest = Some(high);

@@ -3,6 +3,7 @@
 use chrono::NaiveDate;
 
 use crate::deliver::write::WriteError;
+use crate::intake::FrameError;
 use crate::intake::account::Newest;
 use crate::ledger::{Unbalanced, Unreadable};
 
@@ -11,7 +12,10 @@ use crate::ledger::{Unbalanced, Unreadable};
 #[non_exhaustive]
 pub enum Error {
     /// No input could be read as a table with records.
-    #[error("no record was read")]
+    #[error(
+        "no record was read; expected at least one results file with a header and records below \
+         it. Put the laboratory's CSV files into the site's results folder, or name them"
+    )]
     NothingRead {
         /// Each file and why.
         unreadable: Vec<Unreadable>,
@@ -48,7 +52,7 @@ pub enum Error {
     Unbalanced(#[from] Unbalanced),
     /// The frame failed: a fault of this program.
     #[error("the table could not be held: {0}. Nothing was written; please report this")]
-    Frame(#[from] polars::prelude::PolarsError),
+    Frame(#[from] FrameError),
     /// No threads could be started.
     #[error("no threads could be started: {why}")]
     NoThreads {

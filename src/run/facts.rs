@@ -12,7 +12,7 @@ use crate::words;
 /// The facts of a run.
 ///
 /// # Errors
-/// A polars error, which would be a fault of this program.
+/// [`Error::Frame`], which would be a fault of this program.
 pub fn run_facts(job: &Job, tidy: &Tidy, as_of: NaiveDate) -> Result<RunFacts, Error> {
     let settings = &job.site.settings;
     Ok(RunFacts {
@@ -93,9 +93,5 @@ fn settings_in_force(site: &Site) -> Vec<(String, String)> {
         ("flags.duplicates-rpd", number(flags.duplicates_rpd)),
     ];
     let estimated = ("flags.estimated-results", number(flags.estimated_results));
-    pairs
-        .into_iter()
-        .chain([estimated])
-        .map(|(key, value)| (key.to_owned(), value))
-        .collect()
+    pairs.into_iter().chain([estimated]).map(|(key, value)| (key.to_owned(), value)).collect()
 }

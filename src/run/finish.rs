@@ -19,7 +19,7 @@ use crate::terms::{PerYear, Reading, Verdict, years_between};
 /// Findings from everything that was computed, sorted as every table is.
 ///
 /// # Errors
-/// A polars error, which would be a fault of this program.
+/// [`Error::Frame`], which would be a fault of this program.
 pub fn findings(
     job: &Job,
     tidy: &Tidy,
@@ -51,10 +51,10 @@ fn notes(job: &Job, tidy: &Tidy) -> Vec<Note> {
         .into_iter()
         .filter(|(told, _)| told.is_said())
         .map(|(told, records)| Note { told: told.clone(), records });
-    let ignored = tidy.ignored.iter().map(|file| Note {
-        told: Told::FileLeftAlone { file: file.clone() },
-        records: 0,
-    });
+    let ignored = tidy
+        .ignored
+        .iter()
+        .map(|file| Note { told: Told::FileLeftAlone { file: file.clone() }, records: 0 });
     let empty = tidy.files.iter().filter(|file| file.records == 0).map(|file| Note {
         told: Told::FileWithoutRecords { file: file.name.clone() },
         records: 0,
@@ -104,9 +104,10 @@ fn series_finding(
         level_now,
         level_now_lower: fit.as_ref().map(|fit| fit.level_now_ln.low.exp()),
         level_now_upper: fit.as_ref().map(|fit| fit.level_now_ln.high.exp()),
-        share_over_limit_now: fit.as_ref().zip(limit).map(|(fit, limit)| {
-            normal::lower((fit.level_now().ln() - limit.ln()) / fit.line.sd)
-        }),
+        share_over_limit_now: fit
+            .as_ref()
+            .zip(limit)
+            .map(|(fit, limit)| normal::lower((fit.level_now().ln() - limit.ln()) / fit.line.sd)),
         residual_sd_ln: fit.as_ref().map(|fit| fit.line.sd),
         r_squared: fit.as_ref().map(|fit| fit.line.r_squared),
         slope_p: fit.as_ref().map(|fit| fit.line.slope_p),
@@ -145,18 +146,14 @@ fn series_finding(
 }
 
 /// The rate that would meet the limit by the goal date from the level at the last used date.
-fn required_rate(
-    level_now: f64,
-    limit: f64,
-    last: NaiveDate,
-    goal: NaiveDate,
-) -> Option<f64> {
+fn required_rate(level_now: f64, limit: f64, last: NaiveDate, goal: NaiveDate) -> Option<f64> {
     let years = years_between(last, goal).0;
     (level_now > limit && years > 0.0).then(|| (level_now / limit).ln() / years)
 }
 
 fn used_value(value: &DateValue, fit: Option<&crate::fit::Fit>, tidy: &Tidy) -> UsedValue {
-    let median = fit.map(|fit| fit.median(value.date));
+    // Outside the window the line says nothing.
+    let median = fit.filter(|_| value.in_fit).map(|fit| fit.median(value.date));
     let residual = match value.reading {
         Reading::Measured(v) if value.in_fit && !value.substituted => {
             median.map(|median| v.ln() - median.ln())

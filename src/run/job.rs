@@ -8,8 +8,8 @@ pub use crate::deliver::Formats;
 use crate::findings::InputHash;
 use crate::intake::Sources;
 use crate::site::Site;
-pub use crate::terms::Stage;
 use crate::terms::Effort;
+pub use crate::terms::Stage;
 
 /// Everything that a run needs to know; the date of today is handed in.
 #[derive(Clone, Debug)]

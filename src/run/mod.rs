@@ -102,7 +102,11 @@ fn decisions_that_match_nothing(
         })
         .map(|(decision, _)| decision.id.clone())
         .collect();
-    if unmatched.is_empty() { Ok(()) } else { Err(Error::DecisionMatchesNothing { ids: unmatched }) }
+    if unmatched.is_empty() {
+        Ok(())
+    } else {
+        Err(Error::DecisionMatchesNothing { ids: unmatched })
+    }
 }
 
 /// Adjusts the slope's p over all series of each site for their number.

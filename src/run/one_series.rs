@@ -108,10 +108,9 @@ pub fn compute(series: &WellSeries, rules: &Rules<'_>, kind: Kind) -> Computed {
     let settings = &rules.site.settings;
     let fitted = match kind {
         Kind::Check => Err(WhyNoRate::NoDatesInWindow),
-        Kind::Review => fit(
-            &points,
-            &FitRules { needs: settings.rate_needs, confidence: settings.confidence },
-        ),
+        Kind::Review => {
+            fit(&points, &FitRules { needs: settings.rate_needs, confidence: settings.confidence })
+        }
     };
     let limit = series.limit.as_ref().map(|limit| limit.value);
     let projection = fitted.as_ref().ok().zip(limit).map(|(fit, limit)| project(fit, limit));
@@ -135,10 +134,9 @@ pub fn compute(series: &WellSeries, rules: &Rules<'_>, kind: Kind) -> Computed {
     let flags = flags(&facts, &judged, &shown);
     let stands = stands_in_the_way(&facts, &judged, &shown, role);
     let detects = facts.detects();
-    let band = fitted.as_ref().map_or_else(
-        |_| Vec::new(),
-        |fit| band(fit, until(fit, projection.as_ref(), &shown)),
-    );
+    let band = fitted
+        .as_ref()
+        .map_or_else(|_| Vec::new(), |fit| band(fit, until(fit, projection.as_ref(), &shown)));
     Computed {
         fit: fitted,
         ranks,

@@ -8,11 +8,11 @@ use super::job::{Job, Kind, Place, Stage, Watch};
 use super::{Error, set_aside_rows};
 use crate::deliver::write::{OutDir, Owner, may_write, write};
 use crate::deliver::{Content, OutFile, ledger_csv, review_files};
-use crate::words::page::examples;
 use crate::findings::{Findings, LedgerRow};
 use crate::intake::Tidy;
 use crate::ledger::Told;
 use crate::words;
+use crate::words::page::examples;
 
 /// A finished run.
 #[derive(Clone, Debug)]

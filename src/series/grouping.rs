@@ -10,7 +10,7 @@ use polars::prelude::{
 
 use super::assemble::{Assembler, RunRow};
 use super::{SeriesKey, WellSeries};
-use crate::intake::Tidy;
+use crate::intake::{FrameError, Tidy};
 use crate::intake::frame::{ABOVE, BELOW, MEASURED, NO_UNIT};
 use crate::intake::names::{date_of, fraction_of};
 use crate::ledger::{Fate, QualityControl, RecordId, Told};
@@ -24,8 +24,12 @@ type Codes = (u32, u32, u32, u8, u32);
 /// basis is not their series'.
 ///
 /// # Errors
-/// A polars error, which would be a fault of this program.
-pub fn group(tidy: &mut Tidy, site: &Site, as_of: NaiveDate) -> PolarsResult<Vec<WellSeries>> {
+/// [`FrameError`], which would be a fault of this program.
+pub fn group(
+    tidy: &mut Tidy,
+    site: &Site,
+    as_of: NaiveDate,
+) -> Result<Vec<WellSeries>, FrameError> {
     let (keys, of_record) = series_of_records(tidy)?;
     tell_unknown_fractions(tidy, &keys, &of_record);
     let sorted = sorted_runs(&tidy.frame, &of_record)?;
@@ -71,9 +75,8 @@ fn series_of_records(tidy: &Tidy) -> PolarsResult<(Vec<SeriesKey>, Vec<Option<u3
         );
         (codes.1 != 0 && codes.2 != 0).then_some(codes)
     };
-    let belongs = |fate: Fate| {
-        fate.gives_a_row() || fate == Fate::QualityControl(QualityControl::Duplicate)
-    };
+    let belongs =
+        |fate: Fate| fate.gives_a_row() || fate == Fate::QualityControl(QualityControl::Duplicate);
     let text = |code: u32| tidy.texts.text(code).to_owned();
     let key = |(site, well, analyte, fraction, depth): Codes| SeriesKey {
         site: text(site),
@@ -101,7 +104,9 @@ fn series_of_records(tidy: &Tidy) -> PolarsResult<(Vec<SeriesKey>, Vec<Option<u3
         .fates()
         .iter()
         .enumerate()
-        .map(|(at, fate)| codes_at(at).filter(|_| belongs(*fate)).and_then(|c| places.get(&c).copied()))
+        .map(|(at, fate)| {
+            codes_at(at).filter(|_| belongs(*fate)).and_then(|c| places.get(&c).copied())
+        })
         .collect();
     Ok((keys.into_iter().map(|(key, _)| key).collect(), of_record))
 }

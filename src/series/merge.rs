@@ -29,11 +29,7 @@ pub struct Merged {
 /// # None
 /// The date holds nothing but duplicates, and duplicates are not averaged in.
 #[must_use]
-pub fn merge_date(
-    day: &[Candidate],
-    same_day: SameDay,
-    duplicates: Duplicates,
-) -> Option<Merged> {
+pub fn merge_date(day: &[Candidate], same_day: SameDay, duplicates: Duplicates) -> Option<Merged> {
     let counts = |candidate: &&Candidate| match (candidate.role, duplicates) {
         (SampleRole::Primary, _) | (SampleRole::Duplicate, Duplicates::Average) => true,
         (SampleRole::Duplicate, Duplicates::Primary) => false,
@@ -46,11 +42,8 @@ pub fn merge_date(
             _ => None,
         })
         .collect();
-    let (reading, winners) = if measured.is_empty() {
-        one_reading(&all)?
-    } else {
-        several_detects(&measured, same_day)
-    };
+    let (reading, winners) =
+        if measured.is_empty() { one_reading(&all)? } else { several_detects(&measured, same_day) };
     let mut used: Vec<RecordId> = winners.iter().map(|candidate| candidate.record).collect();
     used.sort_unstable();
     let mut lost: Vec<RecordId> = day
@@ -89,7 +82,10 @@ fn several_detects<'a>(
         SameDay::Highest => {
             let highest = sorted[sorted.len() - 1];
             let winner = measured.iter().find(|(_, v)| v.total_cmp(&highest).is_eq());
-            (Reading::Measured(highest), winner.map(|(candidate, _)| *candidate).into_iter().collect())
+            (
+                Reading::Measured(highest),
+                winner.map(|(candidate, _)| *candidate).into_iter().collect(),
+            )
         }
     }
 }

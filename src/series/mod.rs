@@ -14,10 +14,10 @@ pub mod window;
 pub mod grouping;
 pub mod assemble;
 
-pub use key::SeriesKey;
 pub use grouping::group;
-pub use window::window_for;
+pub use key::SeriesKey;
 pub use pairs::DuplicatePair;
 pub use points::{DateValue, MergeRules, Points, Window, points};
 pub use round::{Round, RoundRules};
 pub use well_series::{AppliedLimit, Candidate, SampleRole, WellSeries};
+pub use window::window_for;

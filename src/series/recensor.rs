@@ -27,11 +27,11 @@ pub struct Recensored {
 #[must_use]
 pub fn recensor(mut known: Vec<Candidate>, unit: Unit) -> Recensored {
     let mut out = (BTreeSet::new(), BTreeSet::new());
-    let under_own_limit = |candidate: &Candidate| match (candidate.reading, candidate.reporting_limit)
-    {
-        (Reading::Measured(v), Some(limit)) if v < limit => Some(limit),
-        _ => None,
-    };
+    let under_own_limit =
+        |candidate: &Candidate| match (candidate.reading, candidate.reporting_limit) {
+            (Reading::Measured(v), Some(limit)) if v < limit => Some(limit),
+            _ => None,
+        };
     let applies = unit.dimension() != Dimension::Activity
         && known.iter().any(|candidate| !candidate.reading.is_detect())
         && known.iter().any(|candidate| under_own_limit(candidate).is_some());

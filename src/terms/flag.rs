@@ -161,7 +161,9 @@ impl FlagCode {
     #[must_use]
     pub fn source(self) -> &'static str {
         match self {
-            Self::FewDates | Self::FewDetects | Self::EstimatedResults => "common practice, no source",
+            Self::FewDates | Self::FewDetects | Self::EstimatedResults => {
+                "common practice, no source"
+            }
             Self::Stale | Self::UnitSlip | Self::CopiedValues => "common practice, no source",
             Self::ShortRecord => {
                 "reviews of long-term monitoring: about 4 years of quarterly data for a moderately \
@@ -172,7 +174,9 @@ impl FlagCode {
             Self::FallingReportingLimits | Self::UninformativeNonDetects => {
                 "censored likelihood: a non-detect far above the line adds nothing"
             }
-            Self::Substituted => "the site file's setting (substitution distorts trends: Helsel 2005)",
+            Self::Substituted => {
+                "the site file's setting (substitution distorts trends: Helsel 2005)"
+            }
             Self::DuplicatesDiffer => {
                 "relative percent difference, 30 % for ground water in project plans; the \
                  reporting-limit criterion near the limit from memory"

@@ -12,11 +12,11 @@ pub mod band;
 pub mod stage;
 
 pub use band::BandPoint;
-pub use stage::Stage;
 pub use flag::{Figure, Flag, FlagCode, Standing};
 pub use name::{folded, nearest};
 pub use reading::{Concentration, Reading};
 pub use reasons::{WhyNoDate, WhyNoRate};
+pub use stage::Stage;
 pub use time::{PerYear, Span, Years, date_after, years_between};
 pub use unit::{Dimension, Unit, UnitText};
 pub use verdict::{Effort, Method, Pace, Verdict};

@@ -62,11 +62,8 @@ pub fn date_after(from: NaiveDate, years: f64) -> Option<NaiveDate> {
     // Within the bound just checked the cast is exact.
     #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)]
     let shift = Days::new(days.abs() as u64);
-    let date = if days < 0.0 {
-        from.checked_sub_days(shift)?
-    } else {
-        from.checked_add_days(shift)?
-    };
+    let date =
+        if days < 0.0 { from.checked_sub_days(shift)? } else { from.checked_add_days(shift)? };
     let first = NaiveDate::from_ymd_opt(1, 1, 1)?;
     let last = NaiveDate::from_ymd_opt(9999, 12, 31)?;
     (first..=last).contains(&date).then_some(date)

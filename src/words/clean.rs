@@ -40,7 +40,8 @@ pub fn shown_short(text: &str, most: usize) -> String {
 #[must_use]
 pub fn shell_word(word: &str) -> String {
     let word = shown(word);
-    let bare = |c: char| c.is_ascii_alphanumeric() || matches!(c, '.' | '_' | '-' | '/' | ',' | ':');
+    let bare =
+        |c: char| c.is_ascii_alphanumeric() || matches!(c, '.' | '_' | '-' | '/' | ',' | ':');
     if !word.is_empty() && word.chars().all(bare) {
         return word;
     }

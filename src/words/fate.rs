@@ -140,9 +140,13 @@ pub fn what_to_do(why: SetAside) -> Option<&'static str> {
         SetAside::OtherDimension | SetAside::OtherBasis => {
             "correct the unit at the source, or set `unit` or `basis` of the analyte"
         }
-        SetAside::OtherFraction => "list the other `fraction` as an analyte of its own, if it is wanted",
+        SetAside::OtherFraction => {
+            "list the other `fraction` as an analyte of its own, if it is wanted"
+        }
         SetAside::OtherMedium => "nothing, unless the analyte's `medium` is wrong",
-        SetAside::OtherSite => "nothing, unless the site goes by that name: then `aliases` under [site]",
+        SetAside::OtherSite => {
+            "nothing, unless the site goes by that name: then `aliases` under [site]"
+        }
         SetAside::AnalyteNotListed => "add an [[analyte]], or an alias of one",
         SetAside::DepthDiffers => "set the well's `depths` to \"separate\" or \"together\"",
         SetAside::UnknownSampleType => "map the type in `sample-types` under [[results]]",

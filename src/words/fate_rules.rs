@@ -34,7 +34,9 @@ pub fn set_aside(why: SetAside) -> &'static str {
             "The unit measures another thing than the series' unit (mass, amount or activity)."
         }
         SetAside::OtherBasis => "The unit counts another thing than the series, as N or as NO3.",
-        SetAside::OtherFraction => "The result is dissolved where the site file lists total, or the reverse.",
+        SetAside::OtherFraction => {
+            "The result is dissolved where the site file lists total, or the reverse."
+        }
         SetAside::OtherMedium => "The sample's medium is not the one declared for the analyte.",
         SetAside::OtherSite => "The record belongs to another site than the site file's.",
         SetAside::AnalyteNotListed => {
@@ -44,7 +46,9 @@ pub fn set_aside(why: SetAside) -> &'static str {
             "The well has results at more than one depth, and the site file does not yet say \
              whether they are separate series or one."
         }
-        SetAside::UnknownSampleType => "The sample type is neither known nor mapped in the site file.",
+        SetAside::UnknownSampleType => {
+            "The sample type is neither known nor mapped in the site file."
+        }
         SetAside::QualifierNeedsLegend => {
             "The qualifier (B, E, N, NJ or an unknown code) means different things at different \
              laboratories; the site file has to say which."

@@ -212,9 +212,7 @@ pub fn formula(code: FlagCode) -> Option<&'static str> {
         FlagCode::DuplicatesDiffer => "RPD = 100 |a - b| / ((a + b) / 2) > 30",
         FlagCode::UnitSlip => "500 <= value / median of neighbours <= 2000, or its inverse",
         FlagCode::WideScatter => "s > ln 2",
-        FlagCode::Outlier => {
-            "r = e / (s(i) sqrt(1 - h));  p = min(1, n 2 P(T[n-3] > |r|)) < 0.05"
-        }
+        FlagCode::Outlier => "r = e / (s(i) sqrt(1 - h));  p = min(1, n 2 P(T[n-3] > |r|)) < 0.05",
         FlagCode::InfluentialPoint => "D = e^2 h / (2 s^2 (1 - h)^2) > 1",
         FlagCode::Autocorrelated => "corr = phi^|dt|;  p = P(chi2[1] > LR) / 2",
         FlagCode::TwoRates | FlagCode::LevelsOff => {

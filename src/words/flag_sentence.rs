@@ -49,14 +49,20 @@ fn crossed(code: FlagCode, figure: f64, threshold: f64) -> String {
             format!("the reporting limits of non-detects fall over the record ({p}, under {t})")
         }
         FlagCode::UninformativeNonDetects => {
-            format!("{share} of the non-detects lie far above the line and add nothing, over {over}")
+            format!(
+                "{share} of the non-detects lie far above the line and add nothing, over {over}"
+            )
         }
         FlagCode::LowResultsLost => {
-            format!("{share} of the results were zero or negative and are lost (no date over {over})")
+            format!(
+                "{share} of the results were zero or negative and are lost (no date over {over})"
+            )
         }
         FlagCode::EstimatedResults => format!("{share} of the detects are estimated, over {over}"),
         FlagCode::Stale => format!("the last used date is {f} years old, over {t}"),
-        FlagCode::Gap => format!("the longest gap between two dates is {f} years, over {}", people(threshold)),
+        FlagCode::Gap => {
+            format!("the longest gap between two dates is {f} years, over {}", people(threshold))
+        }
         FlagCode::DuplicatesDiffer => {
             format!("a duplicate differs from its parent by {f} %, over {t} %")
         }
@@ -65,7 +71,10 @@ fn crossed(code: FlagCode, figure: f64, threshold: f64) -> String {
         }
         FlagCode::CopiedValues => format!("{f} equal values follow one another, {t} or more"),
         FlagCode::WideScatter => {
-            format!("residuals of ln C scatter by {f}, over {} (a factor of two)", people(threshold))
+            format!(
+                "residuals of ln C scatter by {f}, over {} (a factor of two)",
+                people(threshold)
+            )
         }
         FlagCode::Outlier => {
             format!("one residual is too large for its neighbours ({p}, under {t})")
@@ -93,7 +102,10 @@ fn crossed(code: FlagCode, figure: f64, threshold: f64) -> String {
             format!("the date lies {f} years ahead, over the record's {} years", people(threshold))
         }
         FlagCode::SlowerThanDecay => {
-            format!("the upper end of the rate, {f} a year, lies under the decay constant {}", people(threshold))
+            format!(
+                "the upper end of the rate, {f} a year, lies under the decay constant {}",
+                people(threshold)
+            )
         }
         _ => format!("{} ({f}, threshold {t})", bare(code)),
     }
@@ -104,7 +116,9 @@ fn counted(code: FlagCode, figure: f64) -> String {
     let f = people(figure);
     match code {
         FlagCode::ReportingLimitAboveLimit => {
-            format!("non-detects with a reporting limit over the limit: {f}; they show nothing about it")
+            format!(
+                "non-detects with a reporting limit over the limit: {f}; they show nothing about it"
+            )
         }
         FlagCode::EstimatedRecensored => {
             format!("detects under their reporting limit taken as non-detects at it: {f}")
@@ -124,8 +138,12 @@ fn bare(code: FlagCode) -> &'static str {
     match code {
         FlagCode::DateWithheld => "no date is given for want of data",
         FlagCode::ReportingLimitAboveLimit => "non-detects have reporting limits over the limit",
-        FlagCode::DuplicatesDiffer => "a duplicate differs from its parent by more than the criterion",
-        FlagCode::ResultsDenyLine => "the line is under the limit, but the last results do not show it",
+        FlagCode::DuplicatesDiffer => {
+            "a duplicate differs from its parent by more than the criterion"
+        }
+        FlagCode::ResultsDenyLine => {
+            "the line is under the limit, but the last results do not show it"
+        }
         FlagCode::InfluentialPoint => "leaving out one date moves the answer outside its interval",
         FlagCode::WindowMovesDate => "the choice of where the fit begins moves the date",
         FlagCode::TestsDisagree => "the rate's interval and Kendall's test disagree",

@@ -25,7 +25,9 @@ pub fn meaning(pace: Pace) -> &'static str {
             "The earliest reach date is after the goal date, or the series rises and its level is \
              over the limit."
         }
-        Pace::Unclear => "Neither ahead nor behind: the interval holds the goal date or lacks an end.",
+        Pace::Unclear => {
+            "Neither ahead nor behind: the interval holds the goal date or lacks an end."
+        }
     }
 }
 

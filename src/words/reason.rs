@@ -70,9 +70,7 @@ pub fn no_date_meaning(why: WhyNoDate) -> &'static str {
         WhyNoDate::Below => "The verdict is below: there is nothing left to reach.",
         WhyNoDate::NoRate => "No rate was fitted; why_no_rate says why.",
         WhyNoDate::Dates => "The window holds fewer dates than date-needs asks for (default 8).",
-        WhyNoDate::Years => {
-            "The window spans fewer years than date-needs asks for (default 1.5)."
-        }
+        WhyNoDate::Years => "The window spans fewer years than date-needs asks for (default 1.5).",
         WhyNoDate::Detects => {
             "The window holds fewer measured values than date-needs asks for (default 5)."
         }

@@ -23,7 +23,9 @@ fn trend(series: &SeriesFinding, level: f64) -> Option<String> {
     let Some(rate) = rate(series, level) else {
         let dates = counted(series.samples, "date", "dates");
         return Some(match series.why_no_rate {
-            Some(why) => format!("No rate can be given because {} ({dates}).", reason::no_rate(why)),
+            Some(why) => {
+                format!("No rate can be given because {} ({dates}).", reason::no_rate(why))
+            }
             None => format!("No rate was fitted ({dates})."),
         });
     };
@@ -79,7 +81,10 @@ fn now(series: &SeriesFinding) -> Option<String> {
         format!("{over} {}", table(limit))
     });
     let unit = series.unit.label();
-    Some(format!("The last result, of {when}, is {} {unit}{against}.", super::number::reading(last)))
+    Some(format!(
+        "The last result, of {when}, is {} {unit}{against}.",
+        super::number::reading(last)
+    ))
 }
 
 /// The level with its interval and unit: `12 ug/L (9.1 to 16)`.
@@ -153,8 +158,11 @@ fn reach_text(series: &SeriesFinding, reach: NaiveDate) -> String {
         (None, Some(late)) => format!("{late} at the latest, the early end lies before the record"),
         (None, None) => "neither end lies within the record or the calendar".to_owned(),
     };
-    let date =
-        if series.beyond_horizon { "beyond the horizon".to_owned() } else { format!("about {}", month(reach)) };
+    let date = if series.beyond_horizon {
+        "beyond the horizon".to_owned()
+    } else {
+        format!("about {}", month(reach))
+    };
     format!("{date} ({interval})")
 }
 

@@ -37,7 +37,11 @@ pub fn detail(told: &Told) -> String {
             shown(file)
         ),
         Told::ColumnNotUsed { file, column } => {
-            format!("{}: column `{}` has no known meaning and is not used", shown(file), shown(column))
+            format!(
+                "{}: column `{}` has no known meaning and is not used",
+                shown(file),
+                shown(column)
+            )
         }
         Told::AnalyteJoined { written, listed, by } => {
             let by = match by {
@@ -71,7 +75,9 @@ pub fn detail(told: &Told) -> String {
             "{} without a fraction, and none is listed: a series of its own",
             shown(analyte)
         ),
-        Told::UnknownQualifier { code } => format!("qualifier `{}` has no declared meaning", shown(code)),
+        Told::UnknownQualifier { code } => {
+            format!("qualifier `{}` has no declared meaning", shown(code))
+        }
         Told::UnknownCondition { condition } => {
             format!("detection condition `{}` has no declared meaning", shown(condition))
         }
@@ -109,7 +115,8 @@ pub fn detail(told: &Told) -> String {
         Told::HoldingTime => "the holding time was exceeded; used".into(),
         Told::InBlank => "also found in a blank; used as estimated".into(),
         Told::NonDetectUnderDetect => {
-            "a non-detect whose limit lies under a detect of the same date; the detect counts".into()
+            "a non-detect whose limit lies under a detect of the same date; the detect counts"
+                .into()
         }
         Told::Recensored => {
             "a detect under its own reporting limit, taken as a non-detect at that limit".into()
@@ -128,7 +135,9 @@ pub fn detail(told: &Told) -> String {
 /// What a cell should have held.
 fn expectation(expected: Expected) -> &'static str {
     match expected {
-        Expected::Result => "a result such as 0.5, <0.5, >2000, or ND with a limit in its own column",
+        Expected::Result => {
+            "a result such as 0.5, <0.5, >2000, or ND with a limit in its own column"
+        }
         Expected::Limit => "a positive number",
         Expected::Date => "a date such as 2024-03-05",
     }

@@ -59,8 +59,9 @@ pub fn limit(canvas: &Canvas<'_>, frame: &Frame, series: &SeriesFinding) {
     let (left, _, right, _) = frame.rectangle();
     canvas.path(&[(left, y), (right, y)], LIMIT, LIMIT_STROKE);
     let name = Words { color: LIMIT, bold: true, ..label((Across::Left, Along::Center)) };
-    let text = format!("limit {} {}", table(limit), series.unit.label());
-    canvas.words(&text, (right + 12.0, y), &name);
+    let value = format!("{} {}", table(limit), series.unit.label());
+    canvas.words("limit", (right + 12.0, y - 15.0), &name);
+    canvas.words(&value, (right + 12.0, y + 15.0), &name);
 }
 
 /// The goal date as a dotted line with its name at the top, if it lies in the picture.
@@ -73,8 +74,7 @@ pub fn goal(canvas: &Canvas<'_>, frame: &Frame, series: &SeriesFinding) {
     let x = frame.x(goal);
     canvas.dashed(&[(x, top), (x, bottom)], frame.rectangle(), INK, MARK_STROKE, DOTS);
     // Near the right edge the name runs to the left, so that it stays in the picture.
-    let (across, dx) =
-        if x > right - 200.0 { (Across::Right, -8.0) } else { (Across::Left, 8.0) };
+    let (across, dx) = if x > right - 200.0 { (Across::Right, -8.0) } else { (Across::Left, 8.0) };
     let name = label((across, Along::Top));
     canvas.words(&format!("goal {}", month(goal)), (x + dx, top + 4.0), &name);
 }

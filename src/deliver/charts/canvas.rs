@@ -134,9 +134,8 @@ impl<'a> Canvas<'a> {
         let family = FontFamily::SansSerif;
         let font = (family, words.size * FONT_SCALE).into_font();
         let font = if words.bold { font.style(FontStyle::Bold) } else { font };
-        let style = TextStyle::from(font)
-            .color(&words.color)
-            .pos(Pos::new(words.anchor.0, words.anchor.1));
+        let style =
+            TextStyle::from(font).color(&words.color).pos(Pos::new(words.anchor.0, words.anchor.1));
         done(self.area.draw_text(text, &style, (whole(at.0), whole(at.1))));
     }
 }

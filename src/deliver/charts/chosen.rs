@@ -33,11 +33,7 @@ pub fn chosen(findings: &Findings) -> Chosen<'_> {
         dated.iter().copied().filter(|series| !many || matters(series)).collect();
     let keys: Vec<_> = kept.iter().map(|series| &series.key).collect();
     let names = chart_names(&keys).into_iter().map(|name| format!("charts/{name}"));
-    Chosen {
-        left_out: dated.len() - kept.len(),
-        charts: names.zip(kept).collect(),
-        single_dates,
-    }
+    Chosen { left_out: dated.len() - kept.len(), charts: names.zip(kept).collect(), single_dates }
 }
 
 fn matters(series: &SeriesFinding) -> bool {

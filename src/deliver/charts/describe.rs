@@ -15,8 +15,7 @@ const LONGEST: (usize, usize, usize) = (80, 140, 56);
 /// Well and analyte, verdict with rate, and the date or why there is none.
 pub fn headline(canvas: &Canvas<'_>, series: &SeriesFinding, level: f64) {
     let left = f64::from(PLOT_X.0) - 120.0;
-    let title =
-        Words { size: TITLE, color: INK, bold: true, anchor: (Across::Left, Along::Top) };
+    let title = Words { size: TITLE, color: INK, bold: true, anchor: (Across::Left, Along::Top) };
     canvas.words(&shown_short(&name(series), LONGEST.0), (left, 18.0), &title);
     let line = Words { size: LABEL, bold: false, ..title };
     let rate = series_sentence::rate(series, level).or_else(|| {
@@ -39,9 +38,8 @@ fn date(series: &SeriesFinding) -> Option<String> {
         return series_sentence::exceed(series);
     }
     // The first line says these already.
-    let said = |why: &WhyNoDate| {
-        matches!(why, WhyNoDate::NoRate | WhyNoDate::Rising | WhyNoDate::Below)
-    };
+    let said =
+        |why: &WhyNoDate| matches!(why, WhyNoDate::NoRate | WhyNoDate::Rising | WhyNoDate::Below);
     let why = series.why_no_date.filter(|why| !said(why))?;
     Some(format!("no date, since {}", reason::no_date(why)))
 }
@@ -61,7 +59,8 @@ fn name(series: &SeriesFinding) -> String {
 
 /// The caution under everything, and the site.
 pub fn foot(canvas: &Canvas<'_>, series: &SeriesFinding, caution: &str) {
-    let words = Words { size: SMALL, color: LIGHT, bold: false, anchor: (Across::Left, Along::Bottom) };
+    let words =
+        Words { size: SMALL, color: LIGHT, bold: false, anchor: (Across::Left, Along::Bottom) };
     let bottom = f64::from(SIZE.1) - 14.0;
     canvas.words(&shown(caution), (f64::from(PLOT_X.0) - 120.0, bottom), &words);
     let site = Words { anchor: (Across::Right, Along::Bottom), ..words };

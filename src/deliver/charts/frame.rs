@@ -41,7 +41,8 @@ impl Frame {
     pub fn x(&self, date: NaiveDate) -> f64 {
         let day = |date: NaiveDate| f64::from(date.num_days_from_ce());
         let (left, _, right, _) = self.edges;
-        let share = (day(date) - day(self.dates.first)) / (day(self.dates.last) - day(self.dates.first));
+        let share =
+            (day(date) - day(self.dates.first)) / (day(self.dates.last) - day(self.dates.first));
         f64::from(left) + share * f64::from(right - left)
     }
 

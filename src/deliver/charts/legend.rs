@@ -5,8 +5,8 @@ use super::frame::{Frame, Spot};
 use super::marks::{self, Mark, Variant};
 use super::reach::Bar;
 use super::style::{
-    AXIS_ROOM, BAND_OPACITY, DASH, INK, LABEL, LEGEND_COLUMN, LEGEND_ROW, LINE, LINE_STROKE, PLOT_X,
-    THIN,
+    AXIS_ROOM, BAND_OPACITY, DASH, INK, LABEL, LEGEND_COLUMN, LEGEND_ROW, LINE, LINE_STROKE,
+    PLOT_X, THIN,
 };
 use crate::findings::SeriesFinding;
 use crate::terms::Span;

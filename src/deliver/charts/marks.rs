@@ -78,11 +78,8 @@ pub fn draw(canvas: &Canvas<'_>, mark: Mark, at: Spot, foot: f64, variant: Varia
         }
         Mark::Above => {
             let (wide, high) = (1.2 * r, 1.4 * r);
-            let corners = [
-                (at.0, at.1 - high),
-                (at.0 + wide, at.1 + 0.7 * r),
-                (at.0 - wide, at.1 + 0.7 * r),
-            ];
+            let corners =
+                [(at.0, at.1 - high), (at.0 + wide, at.1 + 0.7 * r), (at.0 - wide, at.1 + 0.7 * r)];
             canvas.hollow(&corners, color, MARK_STROKE);
         }
     }

@@ -31,6 +31,8 @@ fn needs_guard(text: &str) -> bool {
 fn is_number(text: &str) -> bool {
     let digits = text.strip_prefix(['-', '+']).unwrap_or(text);
     digits.starts_with(|c: char| c.is_ascii_digit() || c == '.')
-        && digits.bytes().all(|b| b.is_ascii_digit() || matches!(b, b'.' | b'e' | b'E' | b'-' | b'+'))
+        && digits
+            .bytes()
+            .all(|b| b.is_ascii_digit() || matches!(b, b'.' | b'e' | b'E' | b'-' | b'+'))
         && text.parse::<f64>().is_ok_and(f64::is_finite)
 }

@@ -30,9 +30,6 @@ pub const COLUMNS: &[Column<LedgerRow>] = columns! { r: LedgerRow;
 ///
 /// # Errors
 /// Where the target cannot be written.
-pub fn ledger_csv(
-    rows: impl IntoIterator<Item = LedgerRow>,
-    to: &mut dyn Write,
-) -> io::Result<()> {
+pub fn ledger_csv(rows: impl IntoIterator<Item = LedgerRow>, to: &mut dyn Write) -> io::Result<()> {
     rows::write_rows(COLUMNS, rows, to)
 }

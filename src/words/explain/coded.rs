@@ -36,12 +36,10 @@ pub fn entries() -> Vec<Entry> {
         source: f.source(),
         ..ours(f.code(), Kind::Flag, flag::meaning(f))
     });
-    let no_rate = WhyNoRate::ALL
-        .iter()
-        .map(|&w| ours(w.code(), Kind::NoRate, reason::no_rate_meaning(w)));
-    let no_date = WhyNoDate::ALL
-        .iter()
-        .map(|&w| ours(w.code(), Kind::NoDate, reason::no_date_meaning(w)));
+    let no_rate =
+        WhyNoRate::ALL.iter().map(|&w| ours(w.code(), Kind::NoRate, reason::no_rate_meaning(w)));
+    let no_date =
+        WhyNoDate::ALL.iter().map(|&w| ours(w.code(), Kind::NoDate, reason::no_date_meaning(w)));
     verdicts
         .chain(paces)
         .chain(methods)
@@ -54,9 +52,8 @@ pub fn entries() -> Vec<Entry> {
 
 /// Outcomes and reasons.
 fn ledger() -> impl Iterator<Item = Entry> {
-    let outcomes = Outcome::ALL
-        .iter()
-        .map(|&o| ours(o.code(), Kind::Outcome, fate::outcome_meaning(o)));
+    let outcomes =
+        Outcome::ALL.iter().map(|&o| ours(o.code(), Kind::Outcome, fate::outcome_meaning(o)));
     let used = UsedAs::ALL.iter().map(|&u| under(Outcome::Used, u.code(), fate::used_as(u)));
     let merged = Merged::ALL.iter().map(|&m| under(Outcome::Merged, m.code(), fate::merged(m)));
     let none =
@@ -64,8 +61,7 @@ fn ledger() -> impl Iterator<Item = Entry> {
     let control = QualityControl::ALL
         .iter()
         .map(|&q| under(Outcome::QualityControl, q.code(), fate::quality_control(q)));
-    let aside = SetAside::ALL
-        .iter()
-        .map(|&s| under(Outcome::SetAside, s.code(), fate_rules::set_aside(s)));
+    let aside =
+        SetAside::ALL.iter().map(|&s| under(Outcome::SetAside, s.code(), fate_rules::set_aside(s)));
     outcomes.chain(used).chain(merged).chain(none).chain(control).chain(aside)
 }

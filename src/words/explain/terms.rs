@@ -32,7 +32,10 @@ pub const TERMS: [Entry; 19] = [
          says how soon a goal is met at that well. It is neither the rate along the flow path nor a \
          rate of biodegradation.",
     ),
-    term("level", "The fitted median (typical) concentration on a date; half of single samples lie above it."),
+    term(
+        "level",
+        "The fitted median (typical) concentration on a date; half of single samples lie above it.",
+    ),
     term(
         "decision",
         "A person's choice that changes what is fitted: an exclusion, a window, a join, the use of a \
@@ -44,7 +47,10 @@ pub const TERMS: [Entry; 19] = [
         "The date up to which results are known to the run. Without --as-of it is the date of the \
          newest record that can be used.",
     ),
-    term("ledger", "The account of every input record: one outcome and, but for used, one reason each. Its rows equal the records read, or the run fails."),
+    term(
+        "ledger",
+        "The account of every input record: one outcome and, but for used, one reason each. Its rows equal the records read, or the run fails.",
+    ),
     term("effort", "How much is computed: quick makes no refits, full makes all of them."),
     term(
         "confidence",
@@ -75,7 +81,10 @@ pub const TERMS: [Entry; 19] = [
          non-detects keep the lower limit, detects are averaged (or the highest counts, as set).",
     ),
     term("goal-date", "The date by which the limit is to be met, from the site file."),
-    term("horizon", "How many years after the last used date a reach date is still read out to people (default 30)."),
+    term(
+        "horizon",
+        "How many years after the last used date a reach date is still read out to people (default 30).",
+    ),
     term(
         "hindcast",
         "A fit made with what was known at an earlier round and held against what came after: held, \

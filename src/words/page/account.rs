@@ -59,7 +59,13 @@ pub fn set_aside(lines: &mut Lines, run: &RunFacts, most: usize) {
     let rows: Vec<Vec<String>> = reasons.iter().take(most).map(|count| aside(count)).collect();
     lines.rows(&rows, &[Align::Right, Align::Left], 4);
     if let Some(left) = reasons.len().checked_sub(most).filter(|left| *left > 0) {
-        lines.paragraph(&format!("and {} more; ledger.csv has every record", counted(left, "reason", "reasons")), 4);
+        lines.paragraph(
+            &format!(
+                "and {} more; ledger.csv has every record",
+                counted(left, "reason", "reasons")
+            ),
+            4,
+        );
     }
 }
 

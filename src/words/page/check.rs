@@ -73,7 +73,11 @@ fn files(lines: &mut Lines, run: &RunFacts) {
                 0 => String::new(),
                 n => format!(", {}", counted(n, "blank line", "blank lines")),
             };
-            vec![shown(&file.name), counted(file.records, "record", "records"), format!("{}{blank}", file.encoding)]
+            vec![
+                shown(&file.name),
+                counted(file.records, "record", "records"),
+                format!("{}{blank}", file.encoding),
+            ]
         })
         .collect();
     lines.rows(&rows, &[Align::Left, Align::Right, Align::Left], 4);
@@ -120,7 +124,11 @@ fn not_used(lines: &mut Lines, facts: &CheckFacts<'_>) {
         let gap = format!("{HARD_SPACE}{HARD_SPACE}");
         for reason in reasons {
             let what = fate::reason(reason.outcome, &reason.reason);
-            lines.hanging(&format!("{}{gap}{what} [{}]", count(reason.records), shown(&reason.reason)), 2, 6);
+            lines.hanging(
+                &format!("{}{gap}{what} [{}]", count(reason.records), shown(&reason.reason)),
+                2,
+                6,
+            );
             let found = facts
                 .examples
                 .iter()
@@ -142,11 +150,12 @@ fn example(row: &LedgerRow) -> String {
     } else {
         format!("{}, {}:{}", shown(&row.file), shown(&row.sheet), shown(&row.record))
     };
-    let whose: Vec<String> = [&row.well, &row.analyte, &row.date, &row.reported, &row.unit, &row.qualifier]
-        .into_iter()
-        .filter(|text| !text.is_empty())
-        .map(|text| shown_short(text, QUOTED))
-        .collect();
+    let whose: Vec<String> =
+        [&row.well, &row.analyte, &row.date, &row.reported, &row.unit, &row.qualifier]
+            .into_iter()
+            .filter(|text| !text.is_empty())
+            .map(|text| shown_short(text, QUOTED))
+            .collect();
     let detail =
         if row.detail.is_empty() { String::new() } else { format!(" ({})", shown(&row.detail)) };
     format!("{place} {}{detail}", whose.join(", "))

@@ -26,7 +26,10 @@ pub fn explain(entries: &[Entry], options: &PageOptions<'_>) -> String {
 #[must_use]
 pub fn index(options: &PageOptions<'_>) -> String {
     let mut lines = Lines::new(options.width, options.color);
-    lines.paragraph("ebbwell explain WORD tells the meaning, formula and source of any of these.", 0);
+    lines.paragraph(
+        "ebbwell explain WORD tells the meaning, formula and source of any of these.",
+        0,
+    );
     let entries = all();
     for kind in Kind::ALL {
         let mut words: Vec<&str> =

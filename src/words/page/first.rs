@@ -111,10 +111,9 @@ fn entry(lines: &mut Lines, findings: &Findings, series: &SeriesFinding) {
 
 fn level(series: &SeriesFinding) -> String {
     let when = series.sampled.map_or_else(String::new, |span| format!(" in {}", month(span.last)));
-    let limit = series.limit.map_or_else(
-        || "no limit".to_owned(),
-        |limit| format!("limit {}", table(limit)),
-    );
+    let limit = series
+        .limit
+        .map_or_else(|| "no limit".to_owned(), |limit| format!("limit {}", table(limit)));
     match (series_sentence::level(series), series.last_result) {
         (Some(level), _) => format!("typical level {level}{when}; {limit}"),
         (None, Some(last)) => {

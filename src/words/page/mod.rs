@@ -42,8 +42,11 @@ pub struct PageOptions<'a> {
 #[must_use]
 pub fn heading(what: &str, run: &RunFacts, site: &SiteFacts) -> String {
     let name = if site.name.is_empty() { "results files" } else { &site.name };
-    let round =
-        if site.round.is_empty() { String::new() } else { format!("round {}, ", shown(&site.round)) };
+    let round = if site.round.is_empty() {
+        String::new()
+    } else {
+        format!("round {}, ", shown(&site.round))
+    };
     format!("{what}: {}, {round}as of {}", shown(name), iso(run.as_of))
 }
 

@@ -43,8 +43,13 @@ pub fn review(findings: &Findings, options: &PageOptions<'_>) -> String {
         lines.line(&format!("Written to  {}", shown(folder)));
         if options.charts_left_out > 0 {
             let left = counted(options.charts_left_out, "chart is", "charts are");
-            lines.paragraph(&format!("{left} left out: only series that rise, are behind their goal, \
-                or are over their limit without a date have one"), 12);
+            lines.paragraph(
+                &format!(
+                    "{left} left out: only series that rise, are behind their goal, \
+                or are over their limit without a date have one"
+                ),
+                12,
+            );
         }
     }
     lines.line(&format!("Next        {}", next_command(findings, options.site_argument)));

@@ -31,7 +31,12 @@ pub fn show(findings: &Findings, series: &SeriesFinding, options: &PageOptions<'
 }
 
 /// A value with its ends, or the value and that it has none.
-fn ranged(value: Option<f64>, low: Option<f64>, high: Option<f64>, write: fn(f64) -> String) -> Option<String> {
+fn ranged(
+    value: Option<f64>,
+    low: Option<f64>,
+    high: Option<f64>,
+    write: fn(f64) -> String,
+) -> Option<String> {
     let value = write(value?);
     Some(match (low, high) {
         (Some(low), Some(high)) => format!("{value} ({} to {})", write(low), write(high)),
@@ -61,33 +66,87 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
         ("CAS number", series.cas.as_deref().map(shown)),
         ("limit", limit),
         ("goal date", series.goal_date.map(iso)),
-        ("dates in the window", Some(format!("{}, {} with a detect", count(series.samples), count(series.detects)))),
+        (
+            "dates in the window",
+            Some(format!("{}, {} with a detect", count(series.samples), count(series.detects))),
+        ),
         ("first and last date", span),
         ("confidence", Some(format!("{}, two-sided", confidence(level)))),
-        ("rate a year", ranged(rate(series.rate_per_year), rate(series.rate_lower), rate(series.rate_upper), people)),
+        (
+            "rate a year",
+            ranged(
+                rate(series.rate_per_year),
+                rate(series.rate_lower),
+                rate(series.rate_upper),
+                people,
+            ),
+        ),
         ("half-life, years", ranged(half, half_low, half_high, people)),
-        ("Theil-Sen rate a year", ranged(series.sen_rate_per_year, series.sen_rate_lower, series.sen_rate_upper, people)),
-        ("level at the start", series.level_at_start.map(|l| format!("{} (the line's; no interval is computed)", in_unit(people(l))))),
-        ("level now", ranged(series.level_now, series.level_now_lower, series.level_now_upper, people).map(in_unit)),
-        ("single samples over the limit now", series.share_over_limit_now.map(|s| format!("about {} by the line and its scatter", percent(s)))),
+        (
+            "Theil-Sen rate a year",
+            ranged(series.sen_rate_per_year, series.sen_rate_lower, series.sen_rate_upper, people),
+        ),
+        (
+            "level at the start",
+            series
+                .level_at_start
+                .map(|l| format!("{} (the line's; no interval is computed)", in_unit(people(l)))),
+        ),
+        (
+            "level now",
+            ranged(series.level_now, series.level_now_lower, series.level_now_upper, people)
+                .map(in_unit),
+        ),
+        (
+            "single samples over the limit now",
+            series
+                .share_over_limit_now
+                .map(|s| format!("about {} by the line and its scatter", percent(s))),
+        ),
         ("scatter of ln C", series.residual_sd_ln.map(people)),
         ("R squared", series.r_squared.map(people)),
         ("no slope", series.slope_p.map(p_value)),
         ("no slope, adjusted", series.slope_p_adjusted.map(p_value)),
-        ("Kendall's S", series.kendall_s.map(|s| {
-            let p = series.kendall_p.map_or_else(String::new, |p| format!(" ({})", p_value(p)));
-            format!("{}{p}", table(s))
-        })),
+        (
+            "Kendall's S",
+            series.kendall_s.map(|s| {
+                let p = series.kendall_p.map_or_else(String::new, |p| format!(" ({})", p_value(p)));
+                format!("{}{p}", table(s))
+            }),
+        ),
         ("limit met", series_sentence::reach(series)),
-        ("limit met by the mean", series.reach_date_mean.map(|d| format!("about {} (no interval is computed)", month(d)))),
-        ("not met before", series.reach_earliest.filter(|_| series.reach_date.is_none()).map(month)),
-        ("limit crossed", series.exceed_date.map(|d| {
-            let early = series.exceed_earliest.map_or_else(|| "no early end".to_owned(), |e| format!("{} at the earliest", month(e)));
-            format!("about {} ({early})", month(d))
-        })),
-        ("required rate a year", series.required_rate_per_year.map(|r| format!("{} from the level now to the goal", people(r)))),
-        ("why no rate", series.why_no_rate.map(|w| format!("{}: {}", w.code(), reason::no_rate(w)))),
-        ("why no date", series.why_no_date.map(|w| format!("{}: {}", w.code(), reason::no_date(w)))),
+        (
+            "limit met by the mean",
+            series.reach_date_mean.map(|d| format!("about {} (no interval is computed)", month(d))),
+        ),
+        (
+            "not met before",
+            series.reach_earliest.filter(|_| series.reach_date.is_none()).map(month),
+        ),
+        (
+            "limit crossed",
+            series.exceed_date.map(|d| {
+                let early = series.exceed_earliest.map_or_else(
+                    || "no early end".to_owned(),
+                    |e| format!("{} at the earliest", month(e)),
+                );
+                format!("about {} ({early})", month(d))
+            }),
+        ),
+        (
+            "required rate a year",
+            series
+                .required_rate_per_year
+                .map(|r| format!("{} from the level now to the goal", people(r))),
+        ),
+        (
+            "why no rate",
+            series.why_no_rate.map(|w| format!("{}: {}", w.code(), reason::no_rate(w))),
+        ),
+        (
+            "why no date",
+            series.why_no_date.map(|w| format!("{}: {}", w.code(), reason::no_date(w))),
+        ),
     ];
     rows.into_iter()
         .filter_map(|(name, text)| text.map(|text| vec![name.to_owned(), text]))
@@ -115,7 +174,8 @@ fn flags(lines: &mut Lines, series: &SeriesFinding) {
 fn figure_line(flag: &crate::terms::Flag) -> String {
     let figure = flag_sentence::figure(flag);
     let figure = if figure.is_empty() { String::new() } else { format!("figure {figure}, ") };
-    let threshold = flag.threshold.map_or_else(String::new, |t| format!("threshold {}, ", table(t)));
+    let threshold =
+        flag.threshold.map_or_else(String::new, |t| format!("threshold {}, ", table(t)));
     format!("{figure}{threshold}source: {}", flag.code.source())
 }
 
@@ -128,7 +188,9 @@ fn records(lines: &mut Lines, series: &SeriesFinding) {
     let rows: Vec<Vec<String>> = series
         .records
         .iter()
-        .map(|of| vec![count(of.records), of.outcome.to_owned(), fate::reason(of.outcome, &of.reason)])
+        .map(|of| {
+            vec![count(of.records), of.outcome.to_owned(), fate::reason(of.outcome, &of.reason)]
+        })
         .collect();
     lines.rows(&rows, &[Align::Right, Align::Left, Align::Left], 2);
 }

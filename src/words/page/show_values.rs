@@ -16,8 +16,7 @@ pub fn values(lines: &mut Lines, series: &SeriesFinding) {
     let head = ["date", "value", "fitted", "residual", "", "file:record"];
     let mut rows: Vec<Vec<String>> = vec![head.iter().map(|name| (*name).to_owned()).collect()];
     rows.extend(series.values.iter().map(row));
-    let aligned =
-        [Align::Left, Align::Right, Align::Right, Align::Right, Align::Left, Align::Left];
+    let aligned = [Align::Left, Align::Right, Align::Right, Align::Right, Align::Left, Align::Left];
     lines.rows(&rows, &aligned, 2);
 }
 
@@ -55,6 +54,10 @@ pub fn duplicates(lines: &mut Lines, series: &SeriesFinding) {
         let differs = if pair.differs { format!("; {label}") } else { String::new() };
         let (parent, twin) = (reading(pair.parent), reading(pair.duplicate));
         let place = shown(&pair.record);
-        lines.hanging(&format!("{}  {parent} and {twin}: {rpd}{differs}  {place}", iso(pair.date)), 2, 4);
+        lines.hanging(
+            &format!("{}  {parent} and {twin}: {rpd}{differs}  {place}", iso(pair.date)),
+            2,
+            4,
+        );
     }
 }

@@ -1,0 +1,3 @@
+//! Tables, charts, JSON, file names and the output folder.
+
+pub mod sample;

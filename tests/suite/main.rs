@@ -1,0 +1,8 @@
+//! The one integration binary.
+
+mod cli;
+mod demo;
+mod numerics;
+mod real;
+mod site;
+mod structure;

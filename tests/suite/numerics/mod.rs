@@ -1,0 +1,20 @@
+//! `numerics` against certified, published and independently computed values.
+//!
+//! W01 … W21 are the worked examples of the methods note; each test names the source of its
+//! figures. Tolerances with a name are in `support`.
+
+mod support;
+
+mod distributions;
+mod ends;
+mod exact_trends;
+mod invented;
+mod likelihood;
+mod lines;
+mod points_and_refusals;
+mod properties;
+mod real_series;
+mod residuals_and_deletion;
+mod slopes_of_pairs;
+mod trends;
+mod worked_examples;
