@@ -2,6 +2,7 @@
 
 mod cli;
 mod demo;
+mod intake;
 mod numerics;
 mod real;
 mod site;

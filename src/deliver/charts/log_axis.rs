@@ -6,8 +6,8 @@
 
 use crate::words::number::table;
 
-/// Room kept beyond the outermost value on either side, as a factor.
-const ROOM: f64 = 1.08;
+/// Room kept beyond the outermost value on either side, as a decimal logarithm: a factor of 1.08.
+const ROOM: f64 = 0.033_4;
 /// Decades up to which 1, 2 and 5 are labelled.
 const DECADES_LABELLED_FINELY: f64 = 2.501;
 /// Decades up to which the values between are ticked.
@@ -39,12 +39,13 @@ impl LogAxis {
     /// An axis that holds every positive finite value; one decade from 1 where there is none.
     #[must_use]
     pub fn holding(values: impl IntoIterator<Item = f64>) -> Self {
-        let usable = values.into_iter().filter(|v| v.is_finite() && *v > 0.0);
-        let (least, most) = usable.fold((f64::INFINITY, 0.0_f64), |(a, b), v| (a.min(v), b.max(v)));
-        if most <= 0.0 {
+        let usable = values.into_iter().filter(|v| v.is_finite() && *v > 0.0).map(f64::log10);
+        let (least, most) =
+            usable.fold((f64::INFINITY, f64::NEG_INFINITY), |(a, b), v| (a.min(v), b.max(v)));
+        if least > most {
             return Self::between((1, 0), (1, 1));
         }
-        Self::between(below(least / ROOM), above(most * ROOM))
+        Self::between(below(least - ROOM), above(most + ROOM))
     }
 
     /// The axis between two values of the form 1, 2 or 5 times a power of ten.
@@ -75,24 +76,24 @@ fn log((digit, exponent): (i32, i32)) -> f64 {
     f64::from(digit).log10() + f64::from(exponent)
 }
 
-/// The largest 1, 2 or 5 times a power of ten at or under a value, as (digit, exponent).
+/// The largest 1, 2 or 5 times a power of ten at or under a logarithm, as (digit, exponent).
 fn below(value: f64) -> (i32, i32) {
     let exponent = exponent_of(value);
-    let digit = [5, 2, 1].into_iter().find(|d| log((*d, exponent)) <= value.log10() + 1e-12);
+    let digit = [5, 2, 1].into_iter().find(|d| log((*d, exponent)) <= value + 1e-12);
     digit.map_or((5, exponent - 1), |digit| (digit, exponent))
 }
 
-/// The least 1, 2 or 5 times a power of ten at or over a value, as (digit, exponent).
+/// The least 1, 2 or 5 times a power of ten at or over a logarithm, as (digit, exponent).
 fn above(value: f64) -> (i32, i32) {
     let exponent = exponent_of(value);
-    let digit = [1, 2, 5].into_iter().find(|d| log((*d, exponent)) >= value.log10() - 1e-12);
+    let digit = [1, 2, 5].into_iter().find(|d| log((*d, exponent)) >= value - 1e-12);
     digit.map_or((1, exponent + 1), |digit| (digit, exponent))
 }
 
-/// The power of ten at or under a positive finite value.
+/// The power of ten at or under a logarithm.
 fn exponent_of(value: f64) -> i32 {
     // The logarithm of a positive finite number lies between -324 and 309.
     #[allow(clippy::cast_possible_truncation)]
-    let exponent = value.log10().floor() as i32;
+    let exponent = value.floor() as i32;
     exponent
 }

@@ -1,8 +1,8 @@
 //! Which series a busy person looks at first, and the lines each gets.
 
 use crate::findings::{Findings, SeriesFinding};
-use crate::terms::{Pace, Standing, Verdict};
-use crate::words::layout::Lines;
+use crate::terms::{Pace, Standing, Verdict, WhyNoDate};
+use crate::words::layout::{HARD_SPACE, Lines};
 use crate::words::number::{counted, month, table};
 use crate::words::page::series_name;
 use crate::words::{flag, reason, series_sentence};
@@ -126,7 +126,9 @@ fn level(series: &SeriesFinding) -> String {
 
 fn date(series: &SeriesFinding) -> Option<String> {
     if let Some(reach) = series_sentence::reach(series) {
-        let goal = series.goal_date.map_or_else(String::new, |d| format!("; goal {}", month(d)));
+        let goal = series
+            .goal_date
+            .map_or_else(String::new, |date| format!("; goal{HARD_SPACE}{}", month(date)));
         return Some(format!("typical (median) level meets the limit {reach}{goal}"));
     }
     if let (Some(cross), Some(early)) = (series.exceed_date, series.exceed_earliest) {
@@ -137,8 +139,9 @@ fn date(series: &SeriesFinding) -> Option<String> {
         ));
     }
     let why = series.why_no_date?;
-    // That it rises is the heading already.
-    (series.verdict != Verdict::Rising).then(|| {
+    // That it rises is the heading already, and that there is no rate the line before.
+    let said = series.verdict == Verdict::Rising || why == WhyNoDate::NoRate;
+    (!said).then(|| {
         let bound = series
             .reach_earliest
             .map_or_else(String::new, |date| format!("; not before {}", month(date)));

@@ -40,10 +40,11 @@ fn the_plain_form_ends_at_a_hundred_thousandth_and_at_a_quadrillion() {
 
 #[test]
 fn ties_round_as_the_exact_binary_value_lies_and_halves_to_even() {
-    // 123456.5 is exact in binary; 9.999995e-6 lies under the tie it is written as.
+    // 123456.5 is exact in binary; 9.999995e-6 lies 5e-22 over the tie it is written as.
     assert_eq!(table(123_456.5), "123456");
     assert_eq!(table(123_457.5), "123458");
-    assert_eq!(table(9.999_995e-6), "9.99999e-6");
+    assert_eq!(table(9.999_995e-6), "0.00001");
+    assert_eq!(table(9.999_994e-6), "9.99999e-6");
 }
 
 #[test]

@@ -51,7 +51,7 @@ fn rows_align_and_wrap_their_last_column_under_itself() {
     lines.rows(&rows, &[Align::Right, Align::Left], 2);
     assert_eq!(
         lines.finish(),
-        "   9  a sentence that does not fit on one\n      line\n  10  short\n"
+        "   9  a sentence that does not fit on\n      one line\n  10  short\n"
     );
 }
 
