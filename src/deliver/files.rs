@@ -7,12 +7,15 @@ use super::{flags_csv, summary_csv, summary_json, used_csv, wells_csv};
 use crate::findings::Findings;
 use crate::words::caution::STANDING;
 
+/// Writes a content to where it is given.
+pub type Writing<'a> = Box<dyn FnOnce(&mut dyn Write) -> io::Result<()> + 'a>;
+
 /// What a file holds.
 pub enum Content<'a> {
     /// A text that is ready.
     Text(String),
     /// A content that is made while it is written, so that it is never held whole.
-    Written(Box<dyn FnOnce(&mut dyn Write) -> io::Result<()> + 'a>),
+    Written(Writing<'a>),
 }
 
 /// One file to be written.

@@ -64,7 +64,7 @@ pub fn chart_names(keys: &[&SeriesKey]) -> Vec<String> {
         .map(|(key, stem)| {
             let alone = uses.get(&stem.to_ascii_lowercase()) == Some(&1);
             let name = if alone && stem.len() < LONGEST { stem } else { hashed(&stem, key) };
-            unique(name, &mut taken)
+            unique(&name, &mut taken)
         })
         .collect()
 }
@@ -85,7 +85,7 @@ fn hashed(stem: &str, key: &SeriesKey) -> String {
 }
 
 /// The name, with a number where even the hash agrees with an earlier one.
-fn unique(name: String, taken: &mut BTreeMap<String, usize>) -> String {
+fn unique(name: &str, taken: &mut BTreeMap<String, usize>) -> String {
     let uses = taken.entry(name.to_ascii_lowercase()).or_default();
     *uses += 1;
     if *uses == 1 { format!("{name}.svg") } else { format!("{name}-{uses}.svg") }

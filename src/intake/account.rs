@@ -1,9 +1,7 @@
 //! The account of [`Tidy`]: ledger rows, counts, the newest usable date.
 
 use chrono::NaiveDate;
-use polars::prelude::{
-    Column, DataFrame, IntoLazy, PolarsResult, UInt32Chunked, col, len,
-};
+use polars::prelude::{Column, DataFrame, IntoLazy, PolarsResult, UInt32Chunked, col, len};
 
 use super::Tidy;
 use super::frame::FrameError;

@@ -6,16 +6,14 @@ use crate::terms::{BandPoint, date_after};
 /// Points over the record, enough for a smooth band.
 const OVER_RECORD: i32 = 24;
 /// Points beyond the record.
-const BEYOND: i32 = 16;
-/// A projection longer than twice the record would flatten the data on a chart.
-const TIMES_RECORD: f64 = 2.0;
+const BEYOND: i32 = 32;
 
-/// The band from the first used date to `until` (years from there), but not past twice the
-/// record's length beyond its end.
+/// The band from the first used date to `until` (years from there), but not further beyond the
+/// record than `horizon` years.
 #[must_use]
-pub fn band(fit: &Fit, until: Option<f64>) -> Vec<BandPoint> {
+pub fn band(fit: &Fit, until: Option<f64>, horizon: f64) -> Vec<BandPoint> {
     let last = fit.length().0;
-    let end = until.map_or(last, |until| until.clamp(last, last * (1.0 + TIMES_RECORD)));
+    let end = until.map_or(last, |until| until.clamp(last, last + horizon));
     let over = (0..=OVER_RECORD).map(|i| last * f64::from(i) / f64::from(OVER_RECORD));
     let beyond = (1..=BEYOND)
         .map(|i| last + (end - last) * f64::from(i) / f64::from(BEYOND))

@@ -134,9 +134,10 @@ pub fn compute(series: &WellSeries, rules: &Rules<'_>, kind: Kind) -> Computed {
     let flags = flags(&facts, &judged, &shown);
     let stands = stands_in_the_way(&facts, &judged, &shown, role);
     let detects = facts.detects();
-    let band = fitted
-        .as_ref()
-        .map_or_else(|_| Vec::new(), |fit| band(fit, until(fit, projection.as_ref(), &shown)));
+    let band = fitted.as_ref().map_or_else(
+        |_| Vec::new(),
+        |fit| band(fit, until(fit, projection.as_ref(), &shown), settings.horizon_years),
+    );
     Computed {
         fit: fitted,
         ranks,

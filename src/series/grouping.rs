@@ -10,9 +10,9 @@ use polars::prelude::{
 
 use super::assemble::{Assembler, RunRow};
 use super::{SeriesKey, WellSeries};
-use crate::intake::{FrameError, Tidy};
 use crate::intake::frame::{ABOVE, BELOW, MEASURED, NO_UNIT};
 use crate::intake::names::{date_of, fraction_of};
+use crate::intake::{FrameError, Tidy};
 use crate::ledger::{Fate, QualityControl, RecordId, Told};
 use crate::site::Site;
 use crate::terms::{Reading, Unit};

@@ -2,7 +2,7 @@
 
 use chrono::NaiveDate;
 
-use super::number::{confidence, counted, month, people, percent, table};
+use super::number::{confidence, counted, month, people, people_beside, percent, table};
 use super::reason;
 use crate::findings::SeriesFinding;
 use crate::terms::{Pace, PerYear, Verdict, WhyNoDate};
@@ -52,7 +52,9 @@ pub fn rate(series: &SeriesFinding, level: f64) -> Option<String> {
         _ => "no interval could be given".to_owned(),
     };
     let yearly = yearly(series, rate).map_or_else(String::new, |text| format!(", {text}"));
-    Some(format!("rate {} a year ({interval}){yearly}", people(rate.0)))
+    let ends = [series.rate_lower, series.rate_upper].into_iter().flatten();
+    let widest = ends.map(|end| end.0.abs()).fold(0.0, f64::max);
+    Some(format!("rate {} a year ({interval}){yearly}", people_beside(rate.0, widest)))
 }
 
 /// The change a year in percent, only where the interval shows which way it goes.
@@ -119,7 +121,8 @@ fn date(series: &SeriesFinding) -> Option<String> {
             ),
             None => String::new(),
         };
-        return Some(format!("The typical (median) level meets the limit {main}{mean}."));
+        let meets = meets(series);
+        return Some(format!("The typical (median) level {meets} the limit {main}{mean}."));
     }
     if series.verdict == Verdict::Rising && series.exceed_date.is_some() {
         return exceed(series);
@@ -130,12 +133,30 @@ fn date(series: &SeriesFinding) -> Option<String> {
         WhyNoDate::NoLimit => Some("No limit applies, so there is no date.".to_owned()),
         WhyNoDate::NoRate if series.why_no_rate.is_none() => None,
         why => {
-            let bound = series.reach_earliest.map_or_else(String::new, |earliest| {
-                format!("; the limit is not met before {}", month(earliest))
-            });
+            let bound = not_before(series).map_or_else(String::new, |bound| format!("; {bound}"));
             Some(format!("No date can be supported because {}{bound}.", reason::no_date(why)))
         }
     }
+}
+
+/// `meets`, or `met` where the reach date is not after the last used date.
+#[must_use]
+pub fn meets(series: &SeriesFinding) -> &'static str {
+    match (series.reach_date, series.sampled) {
+        (Some(reach), Some(span)) if reach <= span.last => "met",
+        _ => "meets",
+    }
+}
+
+/// Until when at least the limit is not met, where there is no date and that is known.
+#[must_use]
+pub fn not_before(series: &SeriesFinding) -> Option<String> {
+    let earliest = series.reach_earliest.filter(|_| series.reach_date.is_none())?;
+    Some(if series.earliest_beyond_horizon {
+        "the limit is not met within the horizon".to_owned()
+    } else {
+        format!("the limit is not met before {}", month(earliest))
+    })
 }
 
 /// The reach date with its ends as people read it: `about 2031-04 (2029-10 to 2033-02)`.

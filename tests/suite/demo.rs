@@ -3,7 +3,7 @@
 use std::collections::{BTreeMap, BTreeSet};
 use std::fs;
 use std::path::{Path, PathBuf};
-use std::process::Command;
+use std::process::{Command, Output};
 use std::sync::LazyLock;
 
 use tempfile::TempDir;
@@ -73,20 +73,24 @@ struct Review {
     told: String,
 }
 
+/// Runs the program; it must end well.
+fn ebbwell(arguments: &[&std::ffi::OsStr]) -> Output {
+    let run = Command::new(env!("CARGO_BIN_EXE_ebbwell")).args(arguments).output();
+    let run = run.expect("the program starts");
+    assert_eq!(run.status.code(), Some(0), "{}", String::from_utf8_lossy(&run.stderr));
+    run
+}
+
 impl Review {
     fn of(site: &Path, options: &[&str]) -> Self {
         let place = TempDir::new().expect("a temporary folder");
-        let run = Command::new(env!("CARGO_BIN_EXE_ebbwell"))
-            .arg("review")
-            .arg(site)
-            .arg("--out")
-            .arg(place.path().join("out"))
-            .args(options)
-            .output()
-            .expect("the program starts");
-        let told = String::from_utf8(run.stderr).expect("messages are UTF-8");
-        assert_eq!(run.status.code(), Some(0), "{told}");
-        Self { place, page: String::from_utf8(run.stdout).expect("the page is UTF-8"), told }
+        let out = place.path().join("out");
+        let mut arguments =
+            vec!["review".as_ref(), site.as_os_str(), "--out".as_ref(), out.as_os_str()];
+        arguments.extend(options.iter().map(|option| AsRef::<std::ffi::OsStr>::as_ref(*option)));
+        let run = ebbwell(&arguments);
+        let text = |bytes| String::from_utf8(bytes).expect("what is told is UTF-8");
+        Self { place, page: text(run.stdout), told: text(run.stderr) }
     }
 
     fn table(&self, name: &str) -> Vec<Row> {
@@ -293,6 +297,16 @@ fn names_are_safe_as_formulas_and_as_file_names() {
     assert_eq!(folded.len(), cases().len(), "{charts:?}");
     let plain = |c: char| c.is_ascii_alphanumeric() || "._-/".contains(c);
     assert!(charts.iter().all(|name| name.chars().all(plain)), "{charts:?}");
+}
+
+#[test]
+fn the_outputs_stand_in_the_site_folder_under_the_date_of_the_newest_record() {
+    let copy = altered(|_, _, bytes| bytes.to_vec());
+    let run = ebbwell(&["review".as_ref(), copy.path().as_os_str()]);
+    let out = copy.path().join("review-2026-09-10");
+    assert!(fs::read(out.join("summary.csv")).expect("the summary") == DEMO.files()["summary.csv"]);
+    let page = String::from_utf8(run.stdout).expect("the page is UTF-8");
+    assert!(page.contains("regulator") && page.contains("licensed professionals"), "{page}");
 }
 
 #[test]

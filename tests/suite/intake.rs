@@ -3,7 +3,9 @@
 use ebbwell::intake::{Sources, Tidy, tidy};
 use ebbwell::ledger::LedgerRow;
 use ebbwell::site::{Site, read};
-use proptest::prelude::{ProptestConfig, Strategy, any, prop, prop_assert, prop_assert_eq, proptest};
+use proptest::prelude::{
+    ProptestConfig, Strategy, any, prop, prop_assert, prop_assert_eq, proptest,
+};
 
 const SITE: &str = r#"
 [site]
@@ -70,9 +72,8 @@ fn read_table(site: &Site, text: &str) -> Tidy {
 fn ledger(site: &Site, text: &str) -> Vec<LedgerRow> {
     let tidy = read_table(site, text);
     assert_eq!(tidy.unreadable, []);
-    let detail = |told: &[&ebbwell::ledger::Told]| {
-        ebbwell::words::told::details(told.iter().copied())
-    };
+    let detail =
+        |told: &[&ebbwell::ledger::Told]| ebbwell::words::told::details(told.iter().copied());
     tidy.ledger_rows(site, &detail).expect("rows").collect()
 }
 
@@ -265,9 +266,36 @@ fn a_decision_names_its_records_by_well() {
 /// Cells that laboratories and accidents produce.
 fn cell() -> impl Strategy<Value = String> {
     let known = prop::sample::select(vec![
-        "MW-1", "Benzene", "2024-03-05", "05/03/2024", "4.2", "<0.5", ">10", "ND", "ug/L", "mg/L",
-        "U", "J", "R", "", " ", "0", "-3", "1e400", "NaN", "dry", "duplicate", "71-43-2", "dissolved",
-        "=1+1", "\u{b5}g/L", "5,1", "1/2", "\u{202e}x", "2024-13-45", "45292",
+        "MW-1",
+        "Benzene",
+        "2024-03-05",
+        "05/03/2024",
+        "4.2",
+        "<0.5",
+        ">10",
+        "ND",
+        "ug/L",
+        "mg/L",
+        "U",
+        "J",
+        "R",
+        "",
+        " ",
+        "0",
+        "-3",
+        "1e400",
+        "NaN",
+        "dry",
+        "duplicate",
+        "71-43-2",
+        "dissolved",
+        "=1+1",
+        "\u{b5}g/L",
+        "5,1",
+        "1/2",
+        "\u{202e}x",
+        "2024-13-45",
+        "45292",
     ]);
     let known = known.prop_map(str::to_owned);
     prop::strategy::Union::new([known.boxed(), any::<String>().boxed()])

@@ -88,14 +88,14 @@ pub fn interval(canvas: &Canvas<'_>, frame: &Frame, series: &SeriesFinding) {
     let to = late.map_or(f64::INFINITY, |date| frame.x(date));
     canvas.path(&[(from.max(left), y), (to.min(right), y)], INK, BAR);
     if from >= left {
-        cap(canvas, (from, y))
+        cap(canvas, (from, y));
     } else {
-        arrow(canvas, (left, y), -1.0)
+        arrow(canvas, (left, y), -1.0);
     }
     if to <= right {
-        cap(canvas, (to, y))
+        cap(canvas, (to, y));
     } else {
-        arrow(canvas, (right, y), 1.0)
+        arrow(canvas, (right, y), 1.0);
     }
     if let Some(x) = date.map(|date| frame.x(date)).filter(|x| (left..=right).contains(x)) {
         diamond(canvas, (x, y));

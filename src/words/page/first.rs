@@ -104,7 +104,8 @@ fn entry(lines: &mut Lines, findings: &Findings, series: &SeriesFinding) {
         .filter(|flag| flag.standing == Standing::Raised)
         .map(|raised| flag::label(raised.code))
         .collect();
-    if !doubts.is_empty() {
+    // Without a rate there is nothing to doubt: the reason is said above.
+    if !doubts.is_empty() && series.rate_per_year.is_some() {
         lines.hanging(&format!("doubts: {}", doubts.join(", ")), 4, 6);
     }
 }
@@ -129,7 +130,8 @@ fn date(series: &SeriesFinding) -> Option<String> {
         let goal = series
             .goal_date
             .map_or_else(String::new, |date| format!("; goal{HARD_SPACE}{}", month(date)));
-        return Some(format!("typical (median) level meets the limit {reach}{goal}"));
+        let meets = series_sentence::meets(series);
+        return Some(format!("typical (median) level {meets} the limit {reach}{goal}"));
     }
     if let (Some(cross), Some(early)) = (series.exceed_date, series.exceed_earliest) {
         return Some(format!(
@@ -142,9 +144,8 @@ fn date(series: &SeriesFinding) -> Option<String> {
     // That it rises is the heading already, and that there is no rate the line before.
     let said = series.verdict == Verdict::Rising || why == WhyNoDate::NoRate;
     (!said).then(|| {
-        let bound = series
-            .reach_earliest
-            .map_or_else(String::new, |date| format!("; not before {}", month(date)));
+        let bound = series_sentence::not_before(series);
+        let bound = bound.map_or_else(String::new, |bound| format!("; {bound}"));
         format!("no date: {}{bound}", reason::no_date(why))
     })
 }

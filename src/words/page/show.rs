@@ -37,7 +37,11 @@ fn ranged(
     high: Option<f64>,
     write: fn(f64) -> String,
 ) -> Option<String> {
-    let value = write(value?);
+    let value = match (low, high) {
+        (Some(low), Some(high)) => people_beside(value?, low.abs().max(high.abs())),
+        _ => people(value?),
+    };
+    let write = people;
     Some(match (low, high) {
         (Some(low), Some(high)) => format!("{value} ({} to {})", write(low), write(high)),
         (Some(low), None) => format!("{value} ({} at least, no upper end)", write(low)),

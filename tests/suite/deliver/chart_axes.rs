@@ -85,7 +85,8 @@ fn long_spans_are_thinned_and_short_ones_show_months() {
 #[test]
 fn the_projection_is_shown_to_the_latest_date_but_at_most_two_records_long() {
     let series = sample::decline();
-    let (last, latest) = (series.sampled.expect("dates").last, series.reach_latest.expect("a latest"));
+    let (last, latest) =
+        (series.sampled.expect("dates").last, series.reach_latest.expect("a latest"));
     let shown = range(&series).expect("dates");
     assert!(shown.last >= latest && shown.last < latest + Days::new(500));
     let mut far = sample::decline();

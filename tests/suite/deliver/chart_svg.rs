@@ -63,7 +63,10 @@ fn a_picture_says_in_words_what_it_shows() {
     assert!(description.contains("30 measured values, 8 non-detects, 2 other readings"));
     assert!(description.contains("typical (median) level meets the limit"), "{description}");
     assert!(svg.contains(STANDING));
-    assert!(svg.contains("\nlimit\n") && svg.contains("\n5 ug/L\n"), "the limit is named at its line");
+    assert!(
+        svg.contains("\nlimit\n") && svg.contains("\n5 ug/L\n"),
+        "the limit is named at its line"
+    );
 }
 
 #[test]

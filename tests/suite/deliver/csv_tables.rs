@@ -80,7 +80,8 @@ fn what_is_undefined_is_empty_and_numbers_have_six_digits() {
     let rows = read(&summary_csv(&findings));
     assert_eq!(rows.len(), findings.series.len());
     let few = rows.iter().find(|row| field(row, "verdict") == "too-few").expect("too few");
-    for column in ["rate_per_year", "level_now", "reach_date", "pace", "method", "slope_p", "flags"] {
+    for column in ["rate_per_year", "level_now", "reach_date", "pace", "method", "slope_p", "flags"]
+    {
         assert_eq!(field(few, column), "", "{column}");
     }
     assert_eq!(field(few, "why_no_rate"), "dates");

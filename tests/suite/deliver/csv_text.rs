@@ -5,7 +5,8 @@ use proptest::prelude::{prop_assert, prop_assert_eq, prop_assume, proptest};
 
 #[test]
 fn what_could_be_a_formula_gets_an_apostrophe() {
-    for text in ["=1+1", "+A1", "-A1", "@SUM(1)", "\tx", "\rx", "'quoted", "-", "=", "-1e400", "-inf"]
+    for text in
+        ["=1+1", "+A1", "-A1", "@SUM(1)", "\tx", "\rx", "'quoted", "-", "=", "-1e400", "-inf"]
     {
         assert_eq!(csv_text(text), format!("'{text}"), "{text:?}");
     }

@@ -60,7 +60,10 @@ fn names_that_differ_in_case_or_in_odd_characters_get_different_files() {
     let names = names(&keys);
     let lower: BTreeSet<String> = names.iter().map(|name| name.to_lowercase()).collect();
     assert_eq!(lower.len(), 4, "{names:?}");
-    assert!(names[0].starts_with("MW-1--Benzene-") && names[0].len() == "MW-1--Benzene-12345678.svg".len());
+    assert!(
+        names[0].starts_with("MW-1--Benzene-")
+            && names[0].len() == "MW-1--Benzene-12345678.svg".len()
+    );
     // The hash is of the series alone, so it does not move with its neighbours.
     let fewer = self::names(&keys[..2]);
     assert_eq!(names[..2], fewer[..]);

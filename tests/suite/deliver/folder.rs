@@ -153,7 +153,7 @@ fn another_sites_output_is_refused_and_bare_files_go_by_their_names() {
     put_for(&out, false, "two", &bare).expect("the same results files");
     let mut run = sample::run();
     run.files.pop();
-    let dir = OutDir { path: out.clone(), force: false };
+    let dir = OutDir { path: out, force: false };
     let refused = write(&dir, &run, &bare, Vec::new(), &|| false);
     let message = refused.expect_err("other results files").to_string();
     assert!(message.contains("results/2024.csv and 1 more"), "{message}");

@@ -45,7 +45,8 @@ fn a_finished_swap_whose_old_output_was_left_loses_it_and_nothing_else() {
     let out = here.path().join("review");
     put(&out, false, "one").expect("written");
     stopped_swap(here.path(), "review");
-    put(&here.path().join("other"), false, "other").expect("another folder is none of its business");
+    put(&here.path().join("other"), false, "other")
+        .expect("another folder is none of its business");
     assert!(!out.exists());
     put(&out, false, "two").expect("written");
     stopped_swap(here.path(), "other");
@@ -85,8 +86,7 @@ fn a_run_that_is_stopped_leaves_the_earlier_output_whole() {
             asked.set(asked.get() + 1);
             asked.get() > stop_at
         };
-        let files =
-            vec![OutFile::text("a.csv", "a".into()), OutFile::text("b.csv", "b".into())];
+        let files = vec![OutFile::text("a.csv", "a".into()), OutFile::text("b.csv", "b".into())];
         let result = write(&dir(&out), &sample::run(), &sample::site(), files, &stop);
         assert!(matches!(result, Err(WriteError::Stopped)), "{result:?}");
         assert_eq!(names(&out), ["charts/", "run.json", "summary.csv"]);

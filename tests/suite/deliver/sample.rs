@@ -114,8 +114,7 @@ pub fn counted(mut series: SeriesFinding) -> SeriesFinding {
     let fit: Vec<UsedValue> = series.values.iter().filter(|v| v.in_fit).cloned().collect();
     series.samples = fit.len();
     series.detects = fit.iter().filter(|v| v.reading.is_detect()).count();
-    series.sampled =
-        fit.first().zip(fit.last()).map(|(a, b)| Span { first: a.date, last: b.date });
+    series.sampled = fit.first().zip(fit.last()).map(|(a, b)| Span { first: a.date, last: b.date });
     series.last_result = fit.last().map(|v| v.reading);
     series.records =
         vec![OutcomeCount { outcome: "used", reason: String::new(), records: series.values.len() }];
@@ -205,7 +204,12 @@ pub fn fitted(series: SeriesFinding) -> SeriesFinding {
 }
 
 /// Readings on a line with a repeating scatter: start, rate a year, scatter.
-pub fn scattered(dates: &[NaiveDate], start: f64, rate: f64, scatter: f64) -> Vec<(NaiveDate, Reading)> {
+pub fn scattered(
+    dates: &[NaiveDate],
+    start: f64,
+    rate: f64,
+    scatter: f64,
+) -> Vec<(NaiveDate, Reading)> {
     const WAVE: [f64; 8] = [0.4, -0.9, 0.2, 1.0, -0.5, 0.1, -1.1, 0.7];
     dates
         .iter()
@@ -221,8 +225,7 @@ pub fn scattered(dates: &[NaiveDate], start: f64, rate: f64, scatter: f64) -> Ve
 /// A clean decline towards its limit, with a goal.
 pub fn decline() -> SeriesFinding {
     let dates = quarters("2018-02-14", 30);
-    let mut series =
-        fitted(with(empty("MW-3", "Benzene"), &scattered(&dates, 180.0, 0.28, 0.25)));
+    let mut series = fitted(with(empty("MW-3", "Benzene"), &scattered(&dates, 180.0, 0.28, 0.25)));
     series.goal_date = Some(date("2034-12-31"));
     series.pace = Some(Pace::Ahead);
     series.required_rate_per_year = Some(0.23);
@@ -330,7 +333,7 @@ fn file(name: &str, records: usize, blank_lines: usize, encoding: &'static str) 
     FileFacts {
         name: name.into(),
         bytes: 12_345,
-        sha256: format!("{:064x}", records),
+        sha256: format!("{records:064x}"),
         records,
         blank_lines,
         encoding,

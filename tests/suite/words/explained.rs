@@ -50,10 +50,25 @@ fn every_column_of_every_table_is_explained_and_no_other() {
 #[test]
 fn the_terms_and_procedures_of_the_documentation_are_explained() {
     for word in [
-        "least-squares", "censored-likelihood", "effective-number", "fieller", "profile-likelihood",
-        "mann-kendall", "theil-sen", "benjamini-hochberg", "reach-date", "required-rate", "hindcast",
-        "round", "one-censoring-point", "rpd", "first-order", "rounds-to-decisive", "ledger",
-        "decision", "confidence",
+        "least-squares",
+        "censored-likelihood",
+        "effective-number",
+        "fieller",
+        "profile-likelihood",
+        "mann-kendall",
+        "theil-sen",
+        "benjamini-hochberg",
+        "reach-date",
+        "required-rate",
+        "hindcast",
+        "round",
+        "one-censoring-point",
+        "rpd",
+        "first-order",
+        "rounds-to-decisive",
+        "ledger",
+        "decision",
+        "confidence",
     ] {
         assert!(!find(word).is_empty(), "{word}");
     }

@@ -80,7 +80,8 @@ fn pages_keep_to_the_width_and_say_the_same_without_colour() {
     let plain = review(&findings, &options(80, false));
     let styled = review(&findings, &options(80, true));
     assert!(!plain.contains('\u{1b}'));
-    let stripped = styled.replace("\u{1b}[1m", "").replace("\u{1b}[2m", "").replace("\u{1b}[0m", "");
+    let stripped =
+        styled.replace("\u{1b}[1m", "").replace("\u{1b}[2m", "").replace("\u{1b}[0m", "");
     assert_ne!(styled, plain);
     assert_eq!(stripped, plain);
 }
@@ -108,7 +109,8 @@ fn text_from_files_cannot_steer_a_terminal() {
         reason: "unreadable-number".into(),
         ..LedgerRow::default()
     };
-    let options = PageOptions { folder: Some(hostile), site_argument: hostile, ..options(80, false) };
+    let options =
+        PageOptions { folder: Some(hostile), site_argument: hostile, ..options(80, false) };
     let facts = CheckFacts {
         run: &findings.run,
         site: &findings.site,

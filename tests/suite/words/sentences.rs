@@ -45,7 +45,10 @@ fn without_a_date_the_sentence_says_why() {
             WhyNoDate::Below | WhyNoDate::NoRate => {}
             WhyNoDate::NoLimit => assert!(text.contains("No limit applies"), "{text}"),
             other => assert!(
-                text.contains(&format!("No date can be supported because {}", reason::no_date(other))),
+                text.contains(&format!(
+                    "No date can be supported because {}",
+                    reason::no_date(other)
+                )),
                 "{text}"
             ),
         }

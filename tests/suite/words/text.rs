@@ -6,7 +6,8 @@ use proptest::prelude::{prop_assert, proptest};
 
 #[test]
 fn control_and_direction_characters_are_seen_and_do_nothing() {
-    for hostile in ["\u{1b}[2J", "a\u{9b}31m", "x\u{202e}y", "a\r\nb", "\u{2066}q\u{2069}", "z\u{200b}"]
+    for hostile in
+        ["\u{1b}[2J", "a\u{9b}31m", "x\u{202e}y", "a\r\nb", "\u{2066}q\u{2069}", "z\u{200b}"]
     {
         let clean = shown(hostile);
         assert!(!clean.chars().any(is_unsafe), "{hostile:?}");
