@@ -1,6 +1,7 @@
 //! Headers become columns: by declared names, by usual words, by the open standard's names.
 
 use std::collections::BTreeMap;
+use std::collections::btree_map::Entry;
 
 use crate::site::Column;
 use crate::terms::Unit;
@@ -221,10 +222,11 @@ pub fn mapping<'a>(
                 if let Some(unit) = unit {
                     mapping.units.entry(column).or_insert(unit);
                 }
-                if mapping.cells.contains_key(&column) {
-                    mapping.also.entry(column).or_default().push(at);
-                } else {
-                    mapping.cells.insert(column, at);
+                match mapping.cells.entry(column) {
+                    Entry::Occupied(_) => mapping.also.entry(column).or_default().push(at),
+                    Entry::Vacant(free) => {
+                        free.insert(at);
+                    }
                 }
             }
             _ if header.is_empty() => {}

@@ -190,12 +190,11 @@ fn fraction(
 ) -> (u8, bool) {
     let asked = listed.and_then(|at| site.analytes[at].fraction);
     if written.is_empty() {
-        match asked {
-            Some(asked) => told.push(Told::FractionAssumed {
+        if let Some(asked) = asked {
+            told.push(Told::FractionAssumed {
                 analyte: analyte.to_owned(),
                 fraction: asked.code().to_owned(),
-            }),
-            None => {}
+            });
         }
         return (fraction_number(asked), false);
     }

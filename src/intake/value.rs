@@ -65,7 +65,6 @@ pub type Judged = (Result<Reading, Fate>, Option<Told>);
 /// A non-detect's limit is its own `<v`, else the larger of the result (if positive) and the
 /// reporting limit, with the detection limit where there is none. In activity units a result under
 /// its own detectable level is a non-detect at that level, whatever its sign.
-#[must_use]
 pub fn reading(said: &Said) -> Judged {
     let aside = |why: SetAside| (Err(Fate::SetAside(why)), None);
     let positive = |v: f64| v > 0.0;

@@ -95,18 +95,18 @@ pub fn car1(t: &[f64], y: &[f64]) -> Option<Car1> {
     let best = sample.best_rate();
     let with = sample.at(best);
     let lr = 2.0 * (with.log_likelihood - flat.log_likelihood);
-    let (phi, with) = if lr > 0.0 { ((-best).exp(), with) } else { (0.0, flat) };
-    let lr = lr.max(0.0);
+    let found = lr > 0.0;
+    let with = if found { with } else { flat };
     Some(Car1 {
         independent,
         log_likelihood_independent: flat.log_likelihood,
-        phi,
+        phi: if found { (-best).exp() } else { 0.0 },
         log_likelihood: with.log_likelihood,
         slope: independent.slope + with.slope,
         slope_error: with.slope_error,
-        lr,
-        p: if lr > 0.0 { 0.5 * tails::chi_squared_upper(lr, 1.0) } else { 1.0 },
-        inflation: if phi > 0.0 { sample.inflation(best).max(1.0) } else { 1.0 },
+        lr: if found { lr } else { 0.0 },
+        p: if found { 0.5 * tails::chi_squared_upper(lr, 1.0) } else { 1.0 },
+        inflation: if found { sample.inflation(best).max(1.0) } else { 1.0 },
     })
 }
 

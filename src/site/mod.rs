@@ -5,7 +5,7 @@
 //! in [`file`](mod@file); the JSON schema of [`schema()`] comes from the same declaration.
 
 pub mod problem;
-mod written;
+pub mod written;
 pub mod choices;
 pub mod delivery;
 pub mod fraction;

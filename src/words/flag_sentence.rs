@@ -2,7 +2,8 @@
 
 use super::flag::label;
 use super::number::{iso, month, p_value, people, percent, table};
-use crate::terms::{Figure, Flag, FlagCode, Standing};
+use super::reason;
+use crate::terms::{Figure, Flag, FlagCode, Standing, WhyNoDate};
 
 /// The flag's sentence: `one residual is too large for its neighbours (p 0.003, under 0.05)`.
 #[must_use]
@@ -14,7 +15,7 @@ pub fn sentence(flag: &Flag) -> String {
         (Figure::Number(figure), Some(threshold)) => crossed(flag.code, *figure, threshold),
         (Figure::Number(figure), None) => counted(flag.code, *figure),
         (Figure::Date(date), _) => format!("{} ({})", bare(flag.code), month(*date)),
-        (Figure::Word(word), _) => format!("{} ({word})", bare(flag.code)),
+        (Figure::Word(word), _) => cased(flag.code, word),
         (Figure::Absent, _) => bare(flag.code).to_owned(),
     }
 }
@@ -33,6 +34,17 @@ pub fn figure(flag: &Flag) -> String {
         Figure::Date(date) => iso(*date),
         Figure::Word(word) => (*word).to_owned(),
         Figure::Absent => String::new(),
+    }
+}
+
+/// A word that says which case it is.
+fn cased(code: FlagCode, word: &str) -> String {
+    match (code, WhyNoDate::from_code(word)) {
+        (FlagCode::DateWithheld, Some(why)) => {
+            format!("no date is given because {}", reason::no_date(why))
+        }
+        (FlagCode::Unbounded, _) => format!("the date's interval has no {word} end"),
+        _ => format!("{} ({word})", bare(code)),
     }
 }
 
@@ -63,11 +75,25 @@ fn crossed(code: FlagCode, figure: f64, threshold: f64) -> String {
         FlagCode::Gap => {
             format!("the longest gap between two dates is {f} years, over {}", people(threshold))
         }
+        // Near the reporting limit the difference is told in multiples of it.
+        FlagCode::DuplicatesDiffer if threshold <= 1.0 => format!(
+            "a duplicate differs from its parent by {f} times the reporting limit, over {t}"
+        ),
         FlagCode::DuplicatesDiffer => {
             format!("a duplicate differs from its parent by {f} %, over {t} %")
         }
+        FlagCode::UnitSlip if figure < 1.0 => format!(
+            "a value is the median of its neighbours divided by {}: a unit may have slipped",
+            people(1.0 / figure)
+        ),
         FlagCode::UnitSlip => {
             format!("a value is {f} times the median of its neighbours: a unit may have slipped")
+        }
+        FlagCode::ReportingLimitAboveLimit => {
+            format!("non-detects with a reporting limit over the limit of {t}: {f}")
+        }
+        FlagCode::BeyondHorizon => {
+            format!("the date lies {f} years ahead, beyond the {t} of the horizon")
         }
         FlagCode::CopiedValues => format!("{f} equal values follow one another, {t} or more"),
         FlagCode::WideScatter => {
@@ -129,6 +155,9 @@ fn counted(code: FlagCode, figure: f64) -> String {
         }
         FlagCode::DuplicatesDiffer => format!("a duplicate differs from its parent by {f} %"),
         FlagCode::LevelsOff => format!("the fall levels off at about {f}"),
+        FlagCode::ResultsDenyLine => {
+            format!("the line is under the limit, but of the last 4 dates {f} do not show it met")
+        }
         _ => format!("{} ({f})", bare(code)),
     }
 }

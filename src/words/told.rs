@@ -33,7 +33,7 @@ pub fn details<'a>(told: impl IntoIterator<Item = &'a Told>) -> String {
 pub fn detail(told: &Told) -> String {
     match told {
         Told::DecodedWindows1252 { file, line } => format!(
-            "{} is not UTF-8 and was read as windows-1252; the first line concerned is {line}",
+            "{} is not UTF-8; it was read as windows-1252 (first line concerned: {line})",
             shown(file)
         ),
         Told::ColumnNotUsed { file, column } => {

@@ -1,4 +1,5 @@
 //! The one integration binary.
+#![allow(clippy::print_stdout, reason = "trials print their figures and say when they skip")]
 
 mod cli;
 mod demo;

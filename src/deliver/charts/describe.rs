@@ -4,7 +4,7 @@
 use super::canvas::{Across, Along, Canvas, Words};
 use super::style::{INK, LABEL, LIGHT, PLOT_X, SHOWN, SIZE, SMALL, TITLE};
 use crate::findings::SeriesFinding;
-use crate::terms::{Reading, WhyNoDate};
+use crate::terms::{Reading, Verdict, WhyNoDate};
 use crate::words::clean::{shown, shown_short};
 use crate::words::number::{counted, month};
 use crate::words::{reason, series_sentence, verdict};
@@ -21,6 +21,7 @@ pub fn headline(canvas: &Canvas<'_>, series: &SeriesFinding, level: f64) {
     let rate = series_sentence::rate(series, level).or_else(|| {
         series.why_no_rate.map(|why| format!("no rate, since {}", reason::no_rate(why)))
     });
+    let rate = rate.filter(|_| series.verdict != Verdict::Undetected);
     let rate = rate.unwrap_or_else(|| verdict::gloss(series.verdict).to_owned());
     let first = format!("{}: {rate}", verdict::label(series.verdict));
     canvas.words(&shown_short(&first, LONGEST.1), (left, 62.0), &line);
@@ -32,7 +33,8 @@ pub fn headline(canvas: &Canvas<'_>, series: &SeriesFinding, level: f64) {
 fn date(series: &SeriesFinding) -> Option<String> {
     if let Some(reach) = series_sentence::reach(series) {
         let goal = series.goal_date.map_or_else(String::new, |d| format!("; goal {}", month(d)));
-        return Some(format!("typical (median) level meets the limit {reach}{goal}"));
+        let meets = series_sentence::meets(series);
+        return Some(format!("typical (median) level {meets} the limit {reach}{goal}"));
     }
     if series.exceed_date.is_some() {
         return series_sentence::exceed(series);

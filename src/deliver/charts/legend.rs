@@ -59,9 +59,11 @@ pub fn entries(series: &SeriesFinding, shown: Option<Span>, level: f64) -> Vec<E
         let variant = Variant { in_fit: false, ..plain };
         entries.push((Glyph::Reading(Mark::Measured, variant), "not in the fit".to_owned()));
     }
-    if series.fitted.is_some() {
+    if let Some(fitted) = &series.fitted {
         entries.push((Glyph::Line, "fitted median".to_owned()));
-        entries.push((Glyph::Projection, "the same, beyond the data".to_owned()));
+        if fitted.band.last().is_some_and(|point| point.date > fitted.used.last) {
+            entries.push((Glyph::Projection, "the same, beyond the data".to_owned()));
+        }
         entries.push((Glyph::Band, format!("its {} interval", confidence(level))));
     }
     let bar = shown.and_then(|shown| Bar::of(series, shown));

@@ -18,11 +18,13 @@ const CAP: f64 = 16.0;
 pub enum Bar {
     /// The date the limit is met, with its interval.
     Met,
+    /// The date by which it is met; the rest lies before the record.
+    MetBy,
     /// The date before which it is not met; more is not known.
     NotBefore,
     /// The date a rising line crosses it.
     Crossed,
-    /// The whole interval lies after the dates shown.
+    /// All of it lies after the dates shown.
     After,
 }
 
@@ -39,6 +41,8 @@ impl Bar {
             Self::Crossed
         } else if date.is_none() && late.is_none() {
             Self::NotBefore
+        } else if date.is_none() && early.is_none() {
+            Self::MetBy
         } else {
             Self::Met
         })
@@ -49,20 +53,22 @@ impl Bar {
     pub fn words(self) -> &'static str {
         match self {
             Self::Met => "limit met: date and interval",
+            Self::MetBy => "limit met, at the latest",
             Self::NotBefore => "limit not met before",
             Self::Crossed => "limit crossed: date and early end",
-            Self::After => "limit met after the dates shown",
+            Self::After => "limit not met within the dates shown",
         }
     }
 
     /// Its glyph in the legend, between two ends.
     pub fn glyph(self, canvas: &Canvas<'_>, (left, y): Spot, right: f64) {
-        if self != Self::After {
-            canvas.path(&[(left, y), (right, y)], INK, BAR);
-            cap(canvas, (left, y));
+        canvas.path(&[(left, y), (right, y)], INK, BAR);
+        match self {
+            Self::MetBy => arrow(canvas, (left, y), -1.0),
+            _ => cap(canvas, (left, y)),
         }
         match self {
-            Self::Met => cap(canvas, (right, y)),
+            Self::Met | Self::MetBy => cap(canvas, (right, y)),
             Self::NotBefore | Self::Crossed | Self::After => arrow(canvas, (right, y), 1.0),
         }
         if matches!(self, Self::Met | Self::Crossed) {

@@ -25,24 +25,24 @@ pub struct Tick {
 
 /// The dates the axis shows: every value, and the projection as far as it helps.
 ///
-/// To the latest reach date, but at most twice the record's length after the last date; half of
-/// that if the reach date itself lies beyond, since the data would only be flattened.
+/// To the late end of the reach interval, but at most twice the record's length after the last
+/// date; if even its early end lies beyond that, half the record, since more would only flatten the
+/// data.
 #[must_use]
 pub fn range(series: &SeriesFinding) -> Option<Span> {
     let first = series.values.first()?.date;
     let last = series.values.last()?.date;
     let record = last.signed_duration_since(first).num_days().unsigned_abs().max(SHORTEST_RECORD);
     let cap = last.checked_add_days(Days::new(MOST_AHEAD * record)).unwrap_or(NaiveDate::MAX);
-    let meeting = series.reach_date.or(series.exceed_date);
-    let farthest = series.reach_latest.or(meeting).or(series.reach_earliest);
-    let wanted = match (meeting, farthest) {
-        (Some(meeting), _) if meeting > cap => last + Days::new(record),
-        (_, Some(farthest)) if farthest > cap => cap,
-        (_, Some(farthest)) => farthest,
+    let date = series.reach_date.or(series.exceed_date);
+    let early = series.reach_earliest.or(series.exceed_earliest).or(date).or(series.reach_latest);
+    let late = series.reach_latest.or(date).or(early);
+    let end = match (early, late) {
+        (Some(early), _) if early > cap => last + Days::new(record / 2),
+        (_, Some(late)) => late.clamp(last, cap),
         _ => last,
     };
     let room = Days::new(record / 12 + 20);
-    let end = wanted.max(last);
     Some(Span { first: first - Days::new(record / 30 + 10), last: end + room })
 }
 

@@ -8,9 +8,6 @@ use crate::words::layout::{Align, HARD_SPACE, Lines};
 use crate::words::number::{count, counted};
 use crate::words::told;
 
-/// Notes a page shows at most; the lesser ones are counted.
-const NOTES_SHOWN: usize = 12;
-
 /// One paragraph: how many records in how many files, and how they ended.
 pub fn read(lines: &mut Lines, run: &RunFacts) {
     let records: usize = run.files.iter().map(|file| file.records).sum();
@@ -76,15 +73,15 @@ fn aside(reason: &OutcomeCount) -> Vec<String> {
     vec![count(reason.records), format!("{what}{step}")]
 }
 
-/// What is told once, the most important last.
-pub fn notes(lines: &mut Lines, notes: &[Note]) {
+/// What is told once, the most important last; at most `most`, the lesser ones are counted.
+pub fn notes(lines: &mut Lines, notes: &[Note], most: usize) {
     let mut said: Vec<Note> = notes.iter().filter(|note| note.told.is_said()).cloned().collect();
     if said.is_empty() {
         return;
     }
     told::sort_notes(&mut said);
     lines.heading("Said once (the most important last)");
-    let lesser = said.len().saturating_sub(NOTES_SHOWN);
+    let lesser = said.len().saturating_sub(most);
     if lesser > 0 {
         let lesser = counted(lesser, "lesser note", "lesser notes");
         lines.aside(&format!("{lesser} in summary.json and ledger.csv"), 2);

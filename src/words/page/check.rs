@@ -13,6 +13,8 @@ use crate::words::number::{count, counted};
 
 /// Longest text of a cell that an example quotes.
 const QUOTED: usize = 40;
+/// Notes that the page shows.
+const NOTES_SHOWN: usize = 60;
 
 /// What a check found out.
 #[derive(Clone, Copy, Debug)]
@@ -52,7 +54,7 @@ pub fn check(facts: &CheckFacts<'_>, options: &PageOptions<'_>) -> String {
     files(&mut lines, facts.run);
     columns(&mut lines, facts.run);
     not_used(&mut lines, facts);
-    account::notes(&mut lines, facts.notes);
+    account::notes(&mut lines, facts.notes, NOTES_SHOWN);
     lines.blank();
     if let Some(folder) = options.folder {
         lines.line(&format!("Written to  {}", shown(folder)));
@@ -156,7 +158,8 @@ fn example(row: &LedgerRow) -> String {
             .filter(|text| !text.is_empty())
             .map(|text| shown_short(text, QUOTED))
             .collect();
-    let detail =
-        if row.detail.is_empty() { String::new() } else { format!(" ({})", shown(&row.detail)) };
+    // What was told of a record that is fine as it stands would only crowd the page.
+    let told = row.outcome == Outcome::SetAside.code() && !row.detail.is_empty();
+    let detail = if told { format!(" ({})", shown(&row.detail)) } else { String::new() };
     format!("{place} {}{detail}", whose.join(", "))
 }

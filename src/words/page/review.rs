@@ -11,6 +11,8 @@ use crate::words::verdict;
 
 /// Reasons for setting records aside that the page shows; the others are counted.
 const REASONS_SHOWN: usize = 6;
+/// Notes that the page shows; `check` shows more.
+const NOTES_SHOWN: usize = 8;
 
 /// The order in which the page counts verdicts: what asks for attention first.
 const BY_ATTENTION: [Verdict; 7] = [
@@ -37,7 +39,7 @@ pub fn review(findings: &Findings, options: &PageOptions<'_>) -> String {
         lines.blank();
         lines.paragraph(&chance, 0);
     }
-    account::notes(&mut lines, &findings.notes);
+    account::notes(&mut lines, &findings.notes, NOTES_SHOWN);
     lines.blank();
     if let Some(folder) = options.folder {
         lines.line(&format!("Written to  {}", shown(folder)));

@@ -6,7 +6,9 @@ use crate::terms::Standing;
 use crate::words::caution::caution;
 use crate::words::clean::shown;
 use crate::words::layout::{Align, Lines};
-use crate::words::number::{confidence, count, iso, month, p_value, people, percent, table};
+use crate::words::number::{
+    confidence, count, iso, month, p_value, people, people_beside, percent, table,
+};
 use crate::words::{fate, flag_sentence, method, pace, reason, series_sentence, verdict};
 
 /// The page.
@@ -31,22 +33,16 @@ pub fn show(findings: &Findings, series: &SeriesFinding, options: &PageOptions<'
 }
 
 /// A value with its ends, or the value and that it has none.
-fn ranged(
-    value: Option<f64>,
-    low: Option<f64>,
-    high: Option<f64>,
-    write: fn(f64) -> String,
-) -> Option<String> {
-    let value = match (low, high) {
-        (Some(low), Some(high)) => people_beside(value?, low.abs().max(high.abs())),
-        _ => people(value?),
-    };
-    let write = people;
+fn ranged(value: Option<f64>, low: Option<f64>, high: Option<f64>) -> Option<String> {
+    let value = value?;
     Some(match (low, high) {
-        (Some(low), Some(high)) => format!("{value} ({} to {})", write(low), write(high)),
-        (Some(low), None) => format!("{value} ({} at least, no upper end)", write(low)),
-        (None, Some(high)) => format!("{value} (no lower end, {} at most)", write(high)),
-        (None, None) => format!("{value} (no interval could be given)"),
+        (Some(low), Some(high)) => {
+            let value = people_beside(value, low.abs().max(high.abs()));
+            format!("{value} ({} to {})", people(low), people(high))
+        }
+        (Some(low), None) => format!("{} ({} at least, no upper end)", people(value), people(low)),
+        (None, Some(high)) => format!("{} (no lower end, {} at most)", people(value), people(high)),
+        (None, None) => format!("{} (no interval could be given)", people(value)),
     })
 }
 
@@ -78,17 +74,12 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
         ("confidence", Some(format!("{}, two-sided", confidence(level)))),
         (
             "rate a year",
-            ranged(
-                rate(series.rate_per_year),
-                rate(series.rate_lower),
-                rate(series.rate_upper),
-                people,
-            ),
+            ranged(rate(series.rate_per_year), rate(series.rate_lower), rate(series.rate_upper)),
         ),
-        ("half-life, years", ranged(half, half_low, half_high, people)),
+        ("half-life, years", ranged(half, half_low, half_high)),
         (
             "Theil-Sen rate a year",
-            ranged(series.sen_rate_per_year, series.sen_rate_lower, series.sen_rate_upper, people),
+            ranged(series.sen_rate_per_year, series.sen_rate_lower, series.sen_rate_upper),
         ),
         (
             "level at the start",
@@ -98,8 +89,7 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
         ),
         (
             "level now",
-            ranged(series.level_now, series.level_now_lower, series.level_now_upper, people)
-                .map(in_unit),
+            ranged(series.level_now, series.level_now_lower, series.level_now_upper).map(in_unit),
         ),
         (
             "single samples over the limit now",
@@ -123,10 +113,7 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
             "limit met by the mean",
             series.reach_date_mean.map(|d| format!("about {} (no interval is computed)", month(d))),
         ),
-        (
-            "not met before",
-            series.reach_earliest.filter(|_| series.reach_date.is_none()).map(month),
-        ),
+        ("limit not met", series_sentence::not_before(series)),
         (
             "limit crossed",
             series.exceed_date.map(|d| {

@@ -94,7 +94,7 @@ fn the_projection_is_shown_to_the_latest_date_but_at_most_two_records_long() {
     let record = last - far.values[0].date;
     let shown = range(&far).expect("dates");
     assert!(shown.last <= last + record * 2 + chrono::Duration::days(400), "{shown:?}");
-    far.reach_date = Some(date("2150-01-01"));
+    far.reach_earliest = Some(date("2150-01-01"));
     let nearer = range(&far).expect("dates");
     assert!(nearer.last < shown.last, "a date out of sight does not flatten the data");
     assert_eq!(range(&sample::empty("a", "b")), None);

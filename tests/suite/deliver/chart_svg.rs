@@ -61,7 +61,7 @@ fn a_picture_says_in_words_what_it_shows() {
     let description = svg.split("<desc>").nth(1).and_then(|d| d.split("</desc>").next());
     let description = description.expect("a description");
     assert!(description.contains("30 measured values, 8 non-detects, 2 other readings"));
-    assert!(description.contains("typical (median) level meets the limit"), "{description}");
+    assert!(description.contains("typical (median) level met the limit"), "{description}");
     assert!(svg.contains(STANDING));
     assert!(
         svg.contains("\nlimit\n") && svg.contains("\n5 ug/L\n"),
@@ -160,7 +160,33 @@ fn the_legend_names_only_what_occurs() {
     far.reach_date = Some(sample::date("2300-01-01"));
     far.reach_earliest = Some(sample::date("2200-01-01"));
     far.reach_latest = None;
-    assert!(chart(&far).contains("limit met after the dates shown"));
+    assert!(chart(&far).contains("limit not met within the dates shown"));
+}
+
+#[test]
+fn the_bar_on_the_limit_line_says_what_is_known() {
+    let says = |series: &SeriesFinding, words: &str| {
+        assert!(chart(series).contains(&format!("\n{words}\n")), "{words}");
+    };
+    let mut series = sample::decline();
+    says(&series, "limit met: date and interval");
+    let latest = series.reach_latest;
+    (series.reach_date, series.reach_earliest) = (None, None);
+    says(&series, "limit met, at the latest");
+    (series.reach_latest, series.reach_earliest) = (None, latest);
+    says(&series, "limit not met before");
+    (series.exceed_date, series.exceed_earliest) = (latest, latest);
+    says(&series, "limit crossed: date and early end");
+    series.limit = None;
+    assert!(!chart(&series).contains("limit crossed"));
+}
+
+#[test]
+fn a_line_that_is_not_carried_on_has_no_dashes_in_the_legend() {
+    let mut series = sample::decline();
+    let fitted = series.fitted.as_mut().expect("a line");
+    fitted.band.retain(|point| point.date <= fitted.used.last);
+    assert!(!chart(&series).contains("the same, beyond the data"));
 }
 
 /// A run of so many series, half of them rising.

@@ -29,6 +29,7 @@ name = "Zinc"
 name = "MW-1"
 limits = [
     { analyte = "copper", value = "1 mg/L", from = 2030-01-01, source = "order" },
+    { analyte = "Lead", value = "3 ug/L", from = 2031-01-01 },
     { analyte = "Lead", value = "7 ug/L" },
 ]
 goal-date = 2032-01-31
@@ -75,6 +76,7 @@ fn before_the_first_has_begun_the_first_stands() {
 fn a_wells_own_limit_goes_before_the_analytes_once_it_has_begun() {
     let site = site_with(LIMITS);
     assert_eq!(limit(&site, "MW-1", "Lead", "2030-01-01").as_deref(), Some("7 ug/L"));
+    assert_eq!(limit(&site, "MW-1", "Lead", "2031-01-01").as_deref(), Some("3 ug/L"));
     assert_eq!(limit(&site, "MW-1", "Copper", "2029-12-31").as_deref(), Some("1300 ug/L"));
     assert_eq!(limit(&site, "MW-1", "Copper", "2030-01-01").as_deref(), Some("1 mg/L"));
     assert_eq!(limit(&site, "BG-1", "Copper", "2030-01-01").as_deref(), Some("1300 ug/L"));

@@ -323,4 +323,6 @@ fn lines_are_right_whatever_ends_them() {
     assert!(plain.starts_with("site.toml:4: "), "{plain}");
     assert_eq!(windows, plain);
     assert_eq!(marked, plain);
+    let broken = told("\u{feff}[site]\nname \"x\"\n");
+    assert!(broken.starts_with("site.toml:2: [site] not readable here"), "{broken}");
 }

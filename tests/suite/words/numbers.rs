@@ -120,3 +120,15 @@ proptest! {
         }
     }
 }
+
+#[test]
+fn an_estimate_is_written_no_finer_than_its_interval() {
+    use ebbwell::words::number::people_beside;
+    assert_eq!(people_beside(0.000_024_9, 0.007_7), "0.00002");
+    assert_eq!(people_beside(-0.000_000_1, 0.007_7), "0");
+    assert_eq!(people_beside(0.278_4, 0.305), "0.278");
+    assert_eq!(people_beside(12.34, 0.1), "12.3");
+    assert_eq!(people_beside(0.5, 4000.0), "0.5");
+    assert_eq!(people_beside(f64::NAN, 1.0), "");
+    assert_eq!(people_beside(0.25, f64::INFINITY), "0.25");
+}

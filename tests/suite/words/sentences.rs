@@ -59,6 +59,25 @@ fn without_a_date_the_sentence_says_why() {
 }
 
 #[test]
+fn what_lies_behind_is_told_as_past() {
+    let mut series = sample::decline();
+    series.reach_date = series.sampled.map(|span| span.last);
+    assert!(series_sentence(&series, 0.9).contains("(median) level met the limit about 2025-05"));
+    series.reach_date = Some(sample::date("2025-06-01"));
+    assert!(series_sentence(&series, 0.9).contains("(median) level meets the limit about 2025-06"));
+}
+
+#[test]
+fn a_bound_beyond_the_horizon_is_not_read_out_as_a_date() {
+    let mut series = sample::undecided();
+    series.reach_earliest = Some(sample::date("2075-10-01"));
+    series.earliest_beyond_horizon = true;
+    let text = series_sentence(&series, 0.9);
+    assert!(text.contains("; the limit is not met within the horizon."), "{text}");
+    assert!(!text.contains("2075"), "{text}");
+}
+
+#[test]
 fn without_a_rate_the_sentence_says_why() {
     for &why in WhyNoRate::ALL {
         let mut series = sample::too_few();
@@ -114,11 +133,43 @@ fn a_flag_says_its_figure_and_its_threshold() {
             assert!(text.chars().any(|c| c.is_ascii_digit()), "{code:?}: {text}");
         }
         let word = flag_sentence::sentence(&Flag::fact(code, Figure::Word("years")));
-        assert!(word.ends_with("(years)"), "{word}");
+        assert!(word.contains("years") || word.contains("than a date needs"), "{word}");
         let date = Figure::Date(sample::date("2031-05-06"));
         assert!(flag_sentence::sentence(&Flag::fact(code, date)).ends_with("(2031-05)"));
         assert!(!flag_sentence::sentence(&Flag::fact(code, Figure::Absent)).is_empty());
     }
+}
+
+#[test]
+fn flags_with_a_case_or_a_special_figure_say_it_in_words() {
+    let said = |flag: Flag| flag_sentence::sentence(&flag);
+    let word = |code, word| said(Flag::fact(code, Figure::Word(word)));
+    let raised = |code, figure, threshold| said(Flag::raised(code, figure, threshold));
+    assert_eq!(
+        word(FlagCode::DateWithheld, "years"),
+        "no date is given because the record is shorter than a date needs"
+    );
+    assert_eq!(word(FlagCode::Unbounded, "latest"), "the date's interval has no latest end");
+    assert_eq!(
+        said(Flag::fact(FlagCode::ResultsDenyLine, Figure::Number(3.0))),
+        "the line is under the limit, but of the last 4 dates 3 do not show it met"
+    );
+    assert_eq!(
+        raised(FlagCode::UnitSlip, 0.001, 500.0),
+        "a value is the median of its neighbours divided by 1000: a unit may have slipped"
+    );
+    assert_eq!(
+        raised(FlagCode::ReportingLimitAboveLimit, 2.0, 5.0),
+        "non-detects with a reporting limit over the limit of 5: 2"
+    );
+    assert_eq!(
+        raised(FlagCode::DuplicatesDiffer, 45.067, 30.0),
+        "a duplicate differs from its parent by 45.1 %, over 30 %"
+    );
+    assert_eq!(
+        raised(FlagCode::DuplicatesDiffer, 2.5, 1.0),
+        "a duplicate differs from its parent by 2.5 times the reporting limit, over 1"
+    );
 }
 
 #[test]
