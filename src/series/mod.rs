@@ -17,7 +17,7 @@ pub mod assemble;
 pub use grouping::group;
 pub use key::SeriesKey;
 pub use pairs::DuplicatePair;
-pub use points::{DateValue, MergeRules, Points, Window, points};
+pub use points::{DateValue, LeaveOut, MergeRules, Points, Window, points};
 pub use round::{Round, RoundRules};
 pub use well_series::{AppliedLimit, Candidate, SampleRole, WellSeries};
 pub use window::window_for;

@@ -62,15 +62,13 @@ pub fn shortest(value: f64, digits: usize) -> String {
     if !value.is_finite() {
         return String::new();
     }
-    if value == 0.0 {
-        return "0".to_owned();
-    }
     // `{:e}` with a precision rounds the exact binary value once, correctly.
     let written = format!("{:.*e}", digits.saturating_sub(1), value.abs());
     let Some((mantissa, exponent)) = written.split_once('e') else { return written };
     let Ok(exponent) = exponent.parse::<i32>() else { return written };
     let mut digits: String = mantissa.chars().filter(char::is_ascii_digit).collect();
     digits.truncate(digits.trim_end_matches('0').len().max(1));
+    // −0 is not under 0, so it has no sign.
     let sign = if value < 0.0 { "-" } else { "" };
     format!("{sign}{}", placed(&digits, exponent))
 }

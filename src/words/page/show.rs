@@ -99,8 +99,8 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
         ),
         ("scatter of ln C", series.residual_sd_ln.map(people)),
         ("R squared", series.r_squared.map(people)),
-        ("no slope", series.slope_p.map(p_value)),
-        ("no slope, adjusted", series.slope_p_adjusted.map(p_value)),
+        ("test of no slope", series.slope_p.map(p_value)),
+        ("the same, adjusted for all series", series.slope_p_adjusted.map(p_value)),
         (
             "Kendall's S",
             series.kendall_s.map(|s| {

@@ -4,6 +4,7 @@
 //! figures. Tolerances with a name are in `support`.
 
 mod support;
+mod doubts_support;
 
 mod distributions;
 mod ends;
@@ -11,10 +12,13 @@ mod exact_trends;
 mod invented;
 mod likelihood;
 mod lines;
+mod normality_and_groups;
 mod points_and_refusals;
 mod properties;
 mod real_series;
+mod resemblance_and_bend;
 mod residuals_and_deletion;
 mod slopes_of_pairs;
 mod trends;
+mod without_a_point;
 mod worked_examples;
