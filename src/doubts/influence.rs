@@ -3,7 +3,7 @@
 use chrono::{Months, NaiveDate};
 
 use super::Setup;
-use crate::fit::{Fit, FitRules, fit as fit_points};
+use crate::fit::{Fit, FitRules, RateSign, fit as fit_points};
 use crate::judge::Facts;
 use crate::numerics::{
     Crossing, Points, deletion_diagnostics, farthest_left_out, left_out, worth_leaving_out,
@@ -60,7 +60,9 @@ fn moves(fit: &Fit, y0: Option<f64>, slope: f64, meets: Option<f64>) -> Option<F
             .and_then(|years| date_after(fit.used.first, years))
             .map_or(Figure::Absent, Figure::Date)
     };
-    if slope * fit.line.slope < 0.0 {
+    // Where the rate's interval holds zero every date can turn its sign: that is no news.
+    let shown_sign = fit.sign() != RateSign::HoldsZero;
+    if shown_sign && slope * fit.line.slope < 0.0 {
         return Some(shown(meets.filter(|_| slope < 0.0)));
     }
     let Some(Crossing::Located { low, high, .. }) =

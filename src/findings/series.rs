@@ -111,6 +111,8 @@ pub struct SeriesFinding {
     pub earliest_beyond_horizon: bool,
     /// Whether the late end of the reach interval lies beyond the horizon.
     pub latest_beyond_horizon: bool,
+    /// The last date that people read as a date.
+    pub horizon: Option<NaiveDate>,
     /// Whether the series stands in the way of the site's date.
     pub stands_in_the_way: bool,
     /// The value of each date, those outside the window too.

@@ -133,7 +133,8 @@ pub fn daniels_variance(n: usize, values: ScoreSums, times: ScoreSums) -> f64 {
     let n = n as f64;
     let skew = |sums: ScoreSums| (sums.rows - sums.squares) as f64;
     // With two points the divisor is zero, and so is what it divides.
-    let skewed = if n > 2.0 { skew(values) * skew(times) / (n * (n - 1.0) * (n - 2.0)) } else { 0.0 };
+    let skewed =
+        if n > 2.0 { skew(values) * skew(times) / (n * (n - 1.0) * (n - 2.0)) } else { 0.0 };
     skewed + values.squares as f64 * times.squares as f64 / (2.0 * n * (n - 1.0))
 }
 

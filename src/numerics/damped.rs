@@ -21,6 +21,14 @@ const FIRST_DAMPING: f64 = 1e-3;
 /// Factor by which damping falls after a step that climbed and rises after one that did not.
 const DAMPING_FACTOR: f64 = 10.0;
 
+/// Share of the rise foreseen under which damping grows although the step climbed (a pure number).
+/// Source: Fletcher (1971) [from memory]; without it a step that overshoots to and fro may take
+/// hundreds.
+const POOR_SHARE: f64 = 0.25;
+
+/// Share of the rise foreseen over which damping falls (a pure number). Source: as above.
+const GOOD_SHARE: f64 = 0.75;
+
 /// Damping under which it is left out (share of the diagonal).
 const LEAST_DAMPING: f64 = 1e-9;
 
@@ -67,7 +75,8 @@ pub struct Lost<const N: usize> {
 /// (B + λ·diag B)·step = g     decrement = gᵀ·B⁻¹·g
 /// ```
 /// where `g` is the gradient and `B` stands for minus the second derivatives. λ falls tenfold after
-/// a step that climbs, rises tenfold after one that does not.
+/// a step that climbs over ¾ of what it foresaw, rises tenfold after one that climbs under ¼ of it or
+/// not at all.
 ///
 /// # Units
 /// Those of the caller; the function is a log-likelihood or like one.
@@ -98,37 +107,51 @@ pub fn climb_damped<const N: usize>(
         if decrement < SMALL_DECREMENT {
             return Ok(Top { at, hill, steps });
         }
-        let next = stepped(&at, &hill, damping);
-        let next_hill = next.map(|next| function(&next));
-        match (next, next_hill) {
-            (Some(next), Some(next_hill)) if next_hill.value > hill.value => {
+        let climbed = stepped(&hill, damping).and_then(|step| {
+            let next = moved(&at, &step)?;
+            let next_hill = function(&next);
+            let share = (next_hill.value - hill.value) / foreseen(&hill, &step);
+            (next_hill.value > hill.value).then_some((next, next_hill, share))
+        });
+        // How much of the rise foreseen came about tells how far the approximation reaches.
+        damping = match climbed {
+            Some((next, next_hill, share)) => {
                 (at, hill) = (next, next_hill);
-                damping /= DAMPING_FACTOR;
-                if damping < LEAST_DAMPING {
-                    damping = 0.0;
+                if share < POOR_SHARE {
+                    (damping * DAMPING_FACTOR).max(FIRST_DAMPING)
+                } else if share > GOOD_SHARE {
+                    damping / DAMPING_FACTOR
+                } else {
+                    damping
                 }
             }
-            _ => {
-                damping = (damping * DAMPING_FACTOR).max(FIRST_DAMPING);
-                if damping > MOST_DAMPING {
-                    let rounded = decrement < ROUNDED_DECREMENT;
-                    return if rounded { Ok(Top { at, hill, steps }) } else { Err(lost) };
-                }
-            }
+            None => (damping * DAMPING_FACTOR).max(FIRST_DAMPING),
+        };
+        if damping < LEAST_DAMPING {
+            damping = 0.0;
+        } else if damping > MOST_DAMPING {
+            let rounded = decrement < ROUNDED_DECREMENT;
+            return if rounded { Ok(Top { at, hill, steps }) } else { Err(lost) };
         }
     }
     Err(Lost { at, value: hill.value, steps: MOST_STEPS })
 }
 
-fn stepped<const N: usize>(at: &[f64; N], hill: &Hill<N>, damping: f64) -> Option<[f64; N]> {
+/// The damped step.
+fn stepped<const N: usize>(hill: &Hill<N>, damping: f64) -> Option<[f64; N]> {
     let mut bend = hill.bend;
     for (i, row) in bend.iter_mut().enumerate() {
         row[i] *= 1.0 + damping;
     }
-    let step = Factor::of(&bend)?.solve(hill.gradient);
-    let mut next = *at;
-    for (next, step) in next.iter_mut().zip(step) {
-        *next += step;
-    }
-    next.iter().all(|x| x.is_finite()).then_some(next)
+    Some(Factor::of(&bend)?.solve(hill.gradient))
+}
+
+fn moved<const N: usize>(at: &[f64; N], step: &[f64; N]) -> Option<[f64; N]> {
+    let next = std::array::from_fn(|i| at[i] + step[i]);
+    next.iter().all(|x: &f64| x.is_finite()).then_some(next)
+}
+
+/// The rise of the parabola that gradient and bend describe.
+fn foreseen<const N: usize>(hill: &Hill<N>, step: &[f64; N]) -> f64 {
+    dot(&hill.gradient, step) - 0.5 * dot(&hill.bend.map(|row| dot(&row, step)), step)
 }

@@ -13,7 +13,9 @@
 //! | when does the line meet a level | [`FirstOrder::crossing`] |
 //! | is there any monotonic trend | [`mann_kendall`]; with non-detects [`certain_pairs()`] |
 //! | is there a fall | [`falling_p`] |
+//! | is there a trend within seasons, the same in all | [`seasonal_kendall()`] |
 //! | what is the slope if a few values are wild | [`theil_sen()`] |
+//! | what is it with non-detects | [`akritas_theil_sen()`] |
 //! | does one point decide the line | [`deletion_diagnostics`], [`farthest`] |
 //! | what is the line without it | [`left_out()`], [`farthest_left_out`] |
 //! | do neighbouring residuals resemble each other | [`lag_one`], [`durbin_watson`] |
@@ -44,13 +46,15 @@ pub mod first_order;
 pub mod inversions;
 pub mod exact_kendall;
 pub mod kendall;
+pub mod slope_counting;
+pub mod certain_counts;
 pub mod certain_pairs;
 pub mod slope_selection;
-pub mod theil_sen;
-pub mod certain_counts;
-pub mod slope_counting;
+pub mod slope_search;
 pub mod critical_slopes;
+pub mod theil_sen;
 pub mod akritas_theil_sen;
+pub mod seasonal_kendall;
 pub mod residuals;
 pub mod deletion;
 pub mod shapiro_wilk;
@@ -98,6 +102,7 @@ pub use points::{BadPoints, Mark, NoLine, Point, Points};
 pub use residuals::{durbin_watson, lag_one};
 pub use rounds::{Dates, Plan, median_spacing, rounds_to_decisive, rounds_to_level};
 pub use scaling::Parameters;
+pub use seasonal_kendall::{Heterogeneity, SeasonTest, SeasonalKendall, seasonal_kendall};
 pub use shapiro_wilk::{ShapiroWilk, shapiro_wilk};
 pub use stretches::{End, Side};
 pub use theil_sen::{TheilSen, median, theil_sen};

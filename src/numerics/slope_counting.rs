@@ -134,7 +134,8 @@ impl Timed {
     pub fn between(&self, i: usize, j: usize) -> Option<Critical> {
         let fall = self.known[i].fall(self.known[j]);
         let apart = self.t[j] - self.t[i];
-        (fall > 0 && apart != 0.0).then(|| Critical { slope: (self.y[j] - self.y[i]) / apart, fall })
+        (fall > 0 && apart != 0.0)
+            .then(|| Critical { slope: (self.y[j] - self.y[i]) / apart, fall })
     }
 
     /// Bounds of all slopes: the steepest are between neighbouring times.
@@ -185,12 +186,12 @@ impl Timed {
     /// Lists slopes from `low` to under `high`, at most `most` of them: the pairs that change places
     /// between the two.
     pub fn list(&self, low: f64, high: f64, most: usize) -> Vec<Critical> {
-        let at_low = self.over(low);
-        let mut order: Vec<u32> = (0..self.len() as u32).collect();
+        let over = self.over(low);
+        let mut all: Vec<(f64, u32)> = over.into_iter().zip(0..).collect();
         // In one place the earlier one first: a pair that ties at `low` has not changed yet.
-        order.sort_by(|&i, &j| at_low[i as usize].total_cmp(&at_low[j as usize]));
-        let at_high = self.over(high);
-        let mut all: Vec<(f64, u32)> = order.iter().map(|&i| (at_high[i as usize], i)).collect();
+        all.sort_unstable_by(|one, other| one.0.total_cmp(&other.0).then(one.1.cmp(&other.1)));
+        let over = self.over(high);
+        all.iter_mut().for_each(|one| one.0 = over[one.1 as usize]);
         let mut spare = all.clone();
         let mut found = Vec::new();
         self.merge_list(&mut all, &mut spare, most, &mut found);
@@ -284,11 +285,7 @@ fn merge_count(all: &mut [(f64, Known)], spare: &mut [(f64, Known)]) -> Run {
             j += 1;
         }
     }
-    Run {
-        lost,
-        above: left_run.above + right_run.above,
-        below: left_run.below + right_run.below,
-    }
+    Run { lost, above: left_run.above + right_run.above, below: left_run.below + right_run.below }
 }
 
 fn insert_count(all: &mut [(f64, Known)]) -> Run {

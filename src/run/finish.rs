@@ -137,6 +137,7 @@ fn series_finding(
         beyond_horizon: beyond(shown.reach),
         earliest_beyond_horizon: beyond(shown.earliest),
         latest_beyond_horizon: beyond(shown.latest),
+        horizon: shown.horizon,
         stands_in_the_way: computed.stands_in_the_way,
         values: points.dates.iter().map(|value| used_value(value, fit.as_ref(), tidy)).collect(),
         fitted: fit.as_ref().map(|fit| Fitted { used: fit.used, band: computed.band }),

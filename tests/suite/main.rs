@@ -2,9 +2,11 @@
 #![allow(clippy::print_stdout, reason = "trials print their figures and say when they skip")]
 
 mod cli;
+mod deliver;
 mod demo;
 mod intake;
 mod numerics;
 mod real;
 mod site;
 mod structure;
+mod words;

@@ -9,8 +9,8 @@ use ebbwell::ledger::Told;
 use ebbwell::series::SeriesKey;
 use ebbwell::site::Role;
 use ebbwell::terms::{
-    Effort, Figure, Flag, FlagCode, Method, Pace, PerYear, Reading, Span, Unit, Verdict, WhyNoDate,
-    WhyNoRate, date_after, years_between,
+    Effort, Figure, Flag, FlagCode, Method, MoreRounds, Pace, PerYear, Reading, Span, Unit,
+    Verdict, WhyNoDate, WhyNoRate, date_after, years_between,
 };
 
 /// A two-sided t quantile for the samples; what it is does not matter here.
@@ -88,6 +88,13 @@ pub fn empty(well: &str, analyte: &str) -> SeriesFinding {
         fitted: None,
         duplicates: Vec::new(),
         records: Vec::new(),
+        horizon: None,
+        alternative_denies: false,
+        models: Vec::new(),
+        adjusted: None,
+        spans: Vec::new(),
+        most_telling: None,
+        more_rounds: MoreRounds::default(),
     }
 }
 

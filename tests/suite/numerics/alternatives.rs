@@ -1,6 +1,6 @@
 //! Constant, first-order, plateau and two rates side by side.
 
-use approx::assert_relative_eq;
+use approx::{assert_relative_eq, relative_eq};
 use ebbwell::numerics::{Better, Comparison, Dropped, Mark, Misfit, Plateau, TwoRates, compare};
 
 use super::doubts_support::invented;
@@ -153,7 +153,8 @@ fn the_tailing_series_agrees_with_forty_digit_values() {
         };
         let agree = |what: &str, found: f64, tolerance: f64| {
             let value = expected(what).expect("a row of the fixture");
-            assert_relative_eq!(found, value, max_relative = tolerance);
+            let agreed = relative_eq!(found, value, max_relative = tolerance);
+            assert!(agreed, "{case} {what}: {found}, expected {value}");
         };
         agree("ln_plateau", plateau.ln_plateau, PARAMETERS);
         agree("ln_height", plateau.ln_height, PARAMETERS);

@@ -6,18 +6,25 @@
 mod support;
 mod doubts_support;
 
+mod alternatives;
+mod breaks;
+mod curves;
 mod distributions;
 mod ends;
 mod exact_trends;
 mod invented;
 mod likelihood;
 mod lines;
+mod noncentral;
 mod normality_and_groups;
+mod plateau_search;
 mod points_and_refusals;
+mod promises_of_models;
 mod properties;
 mod real_series;
 mod resemblance_and_bend;
 mod residuals_and_deletion;
+mod rounds;
 mod slopes_of_pairs;
 mod trends;
 mod without_a_point;

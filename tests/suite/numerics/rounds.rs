@@ -30,7 +30,8 @@ fn rounds_from_nothing_agree_with_the_practice_table() {
             for (power, expected) in [(0.50, even), (0.80, likely)] {
                 let plan = Plan { power, ..QUARTERLY };
                 let found = Dates::NONE.rounds(rate, sd, &plan, 1).expect("under 200 rounds");
-                assert!(found.abs_diff(expected) <= 1);
+                let setting = (half_life, sd, power);
+                assert!(found.abs_diff(expected) <= 1, "{setting:?}: {found} for {expected}");
             }
         }
     }
