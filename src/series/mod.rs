@@ -1,6 +1,6 @@
 //! Readings grouped by site, well, analyte, fraction and depth, merged to one value a date.
 //!
-//! [`points`] is the only way from a series to a fit: it applies the censoring point, the merge of
+//! [`points()`] is the only way from a series to a fit: it applies the censoring point, the merge of
 //! one date, the window and the substitution setting, and says what became of every record.
 
 pub mod key;

@@ -4,20 +4,19 @@ use crate::findings::{Note, OutcomeCount, RunFacts};
 use crate::ledger::Outcome;
 use crate::words::clean::shown;
 use crate::words::fate;
-use crate::words::layout::{Align, Lines};
+use crate::words::layout::{Align, HELD, Lines};
 use crate::words::number::{count, counted};
 use crate::words::told;
 
 /// One paragraph: how many records in how many files, and how they ended.
 pub fn read(lines: &mut Lines, run: &RunFacts) {
     let records: usize = run.files.iter().map(|file| file.records).sum();
-    const HARD: &str = "\u{a0}";
     let ended: Vec<String> = Outcome::ALL
         .iter()
         .map(|&outcome| (outcome, total(run, outcome)))
         .filter(|(_, records)| *records > 0)
         .map(|(outcome, records)| {
-            format!("{} {}", count(records), fate::outcome(outcome)).replace(' ', HARD)
+            format!("{} {}", count(records), fate::outcome(outcome)).replace(' ', HELD)
         })
         .collect();
     let files = counted(run.files.len(), "file", "files");
