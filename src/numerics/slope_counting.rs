@@ -5,14 +5,11 @@
 
 use std::ops::Range;
 
-use super::inversions::sort_and_count;
+use super::passing::{Passing, Place, merge_sort};
 use super::points::{Mark, Point};
 
 /// Rounding of a value over a slope (a pure number). Source: twice the spacing of f64 at one.
 const ROUNDING: f64 = 2.0 * f64::EPSILON;
-
-/// Runs this short (a count) are sorted by insertion. Source: measured; 8 to 32 differ little.
-const SHORT: usize = 16;
 
 /// A slope between two points, with what Kendall's S loses as it is passed.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -30,7 +27,16 @@ pub struct Timed {
     t: Vec<f64>,
     y: Vec<f64>,
     known: Vec<Known>,
-    all_measured: bool,
+    base: Option<Base>,
+}
+
+/// Points in order of what is left over a slope, from which others are soon reached.
+#[derive(Clone, Debug)]
+struct Base {
+    m: f64,
+    order: Vec<u32>,
+    /// What is lost under it.
+    lost: u64,
 }
 
 /// On which sides a value is known: 1 or 0.
@@ -64,7 +70,7 @@ impl Timed {
             t: points.iter().map(|point| point.t).collect(),
             y: points.iter().map(|point| point.y).collect(),
             known: points.iter().map(|point| Known::of(point.mark)).collect(),
-            all_measured: points.iter().all(|point| point.mark == Mark::Measured),
+            base: None,
         }
     }
 
@@ -173,62 +179,43 @@ impl Timed {
     /// Knight (1966), J. Am. Stat. Assoc. 61:436–439, for counting by merging. Held against all
     /// pairs in tests.
     pub fn lost_under(&self, m: f64) -> u64 {
-        // In one time the values rise, so that none of its pairs is counted.
-        let mut over = self.over(m);
-        if self.all_measured {
-            return 2 * sort_and_count(&mut over);
-        }
-        let mut all: Vec<(f64, Known)> = over.into_iter().zip(self.known.iter().copied()).collect();
-        let mut spare = all.clone();
-        merge_count(&mut all, &mut spare).lost
+        let Some(base) = &self.base else {
+            // In one time the values rise, so that none of its pairs is counted.
+            return self.counted(&mut self.over(m, 0..self.len() as u32));
+        };
+        let changed = self.counted(&mut self.over(m, base.order.iter().copied()));
+        if m < base.m { base.lost.saturating_sub(changed) } else { base.lost + changed }
+    }
+
+    /// Puts the points in the order they have over the slope `m`: slopes near it are then counted
+    /// and listed in a time nearly proportional to the number of points.
+    pub fn rest_on(&mut self, m: f64) {
+        let mut all = self.over(m, 0..self.len() as u32);
+        let lost = self.counted(&mut all);
+        let order = all.iter().map(|one| one.index).collect();
+        self.base = Some(Base { m, order, lost });
+    }
+
+    /// Sorts the points; what S loses by it.
+    fn counted(&self, all: &mut [Place]) -> u64 {
+        let mut lost = Lost { known: &self.known, lost: 0, above: 0, below: 0 };
+        merge_sort(all, &mut lost);
+        lost.lost
     }
 
     /// Lists slopes from `low` to under `high`, at most `most` of them: the pairs that change places
     /// between the two.
     pub fn list(&self, low: f64, high: f64, most: usize) -> Vec<Critical> {
-        let over = self.over(low);
-        let mut all: Vec<(f64, u32)> = over.into_iter().zip(0..).collect();
-        // In one place the earlier one first: a pair that ties at `low` has not changed yet.
-        all.sort_unstable_by(|one, other| one.0.total_cmp(&other.0).then(one.1.cmp(&other.1)));
-        let over = self.over(high);
-        all.iter_mut().for_each(|one| one.0 = over[one.1 as usize]);
-        let mut spare = all.clone();
-        let mut found = Vec::new();
-        self.merge_list(&mut all, &mut spare, most, &mut found);
-        found
-    }
-
-    fn merge_list(
-        &self,
-        all: &mut [(f64, u32)],
-        spare: &mut [(f64, u32)],
-        most: usize,
-        found: &mut Vec<Critical>,
-    ) {
-        if all.len() < 2 {
-            return;
-        }
-        let half = all.len() / 2;
-        self.merge_list(&mut all[..half], &mut spare[..half], most, found);
-        self.merge_list(&mut all[half..], &mut spare[half..], most, found);
-        spare.copy_from_slice(all);
-        let (left, right) = spare.split_at(half);
-        let (mut i, mut j) = (0, 0);
-        for place in all.iter_mut() {
-            if j == right.len() || i < left.len() && left[i].0 <= right[j].0 {
-                *place = left[i];
-                i += 1;
-            } else {
-                let (_, later) = right[j];
-                *place = right[j];
-                j += 1;
-                if found.len() < most {
-                    let passed = left[i..].iter().filter(|(_, earlier)| *earlier < later);
-                    let new = passed.filter_map(|one| self.between(one.1 as usize, later as usize));
-                    found.extend(new.take(most - found.len()));
-                }
-            }
-        }
+        let mut all = match &self.base {
+            Some(base) => self.over(low, base.order.iter().copied()),
+            None => self.over(low, 0..self.len() as u32),
+        };
+        merge_sort(&mut all, &mut Silent);
+        let order: Vec<u32> = all.iter().map(|one| one.index).collect();
+        let mut all = self.over(high, order.into_iter());
+        let mut listed = Listed { timed: self, most, found: Vec::new() };
+        merge_sort(&mut all, &mut listed);
+        listed.found
     }
 
     /// Differences between slopes that the values cannot tell, near slopes of this size.
@@ -238,9 +225,13 @@ impl Timed {
         if span > 0.0 { ROUNDING * (size / span + slope.abs()) } else { 0.0 }
     }
 
-    /// Values over the line of slope `m` through the first time, in order of time.
-    fn over(&self, m: f64) -> Vec<f64> {
-        self.t.iter().zip(&self.y).map(|(t, y)| y - m * (t - self.t[0])).collect()
+    /// Values over the line of slope `m` through the first time, in the order asked for.
+    fn over(&self, m: f64, order: impl Iterator<Item = u32>) -> Vec<Place> {
+        let one = |index: u32| {
+            let (t, y) = (self.t[index as usize], self.y[index as usize]);
+            Place { over: y - m * (t - self.t[0]), index }
+        };
+        order.map(one).collect()
     }
 }
 
@@ -253,54 +244,69 @@ pub struct Reach {
     pub falls: u64,
 }
 
-/// Sums over a sorted run.
-#[derive(Clone, Copy)]
-struct Run {
+/// Counts what S loses.
+struct Lost<'a> {
+    known: &'a [Known],
     lost: u64,
+    /// Of the earlier ones not yet placed, those known on each side.
     above: u64,
     below: u64,
 }
 
-fn merge_count(all: &mut [(f64, Known)], spare: &mut [(f64, Known)]) -> Run {
-    if all.len() <= SHORT {
-        return insert_count(all);
-    }
-    let half = all.len() / 2;
-    let left_run = merge_count(&mut all[..half], &mut spare[..half]);
-    let right_run = merge_count(&mut all[half..], &mut spare[half..]);
-    let mut lost = left_run.lost + right_run.lost;
-    let (mut above, mut below) = (left_run.above, left_run.below);
-    spare.copy_from_slice(all);
-    let (left, right) = spare.split_at(half);
-    let (mut i, mut j) = (0, 0);
-    for place in all.iter_mut() {
-        if j == right.len() || i < left.len() && left[i].0 <= right[j].0 {
-            *place = left[i];
-            above -= u64::from(left[i].1.above);
-            below -= u64::from(left[i].1.below);
-            i += 1;
-        } else {
-            *place = right[j];
-            lost += above * u64::from(right[j].1.below) + below * u64::from(right[j].1.above);
-            j += 1;
+impl Passing for Lost<'_> {
+    fn begin(&mut self, earlier: &[Place]) {
+        (self.above, self.below) = (0, 0);
+        for one in earlier {
+            let known = self.known[one.index as usize];
+            self.above += u64::from(known.above);
+            self.below += u64::from(known.below);
         }
     }
-    Run { lost, above: left_run.above + right_run.above, below: left_run.below + right_run.below }
+
+    fn placed(&mut self, earlier: &Place) {
+        let known = self.known[earlier.index as usize];
+        self.above -= u64::from(known.above);
+        self.below -= u64::from(known.below);
+    }
+
+    fn passes(&mut self, _: &[Place], later: &Place) {
+        let known = self.known[later.index as usize];
+        self.lost += self.above * u64::from(known.below) + self.below * u64::from(known.above);
+    }
+
+    fn passes_one(&mut self, earlier: &Place, later: &Place) {
+        self.lost += self.known[earlier.index as usize].fall(self.known[later.index as usize]);
+    }
 }
 
-fn insert_count(all: &mut [(f64, Known)]) -> Run {
-    let mut run = Run { lost: 0, above: 0, below: 0 };
-    for end in 0..all.len() {
-        let one = all[end];
-        run.above += u64::from(one.1.above);
-        run.below += u64::from(one.1.below);
-        let mut at = end;
-        while at > 0 && all[at - 1].0 > one.0 {
-            run.lost += all[at - 1].1.fall(one.1);
-            all[at] = all[at - 1];
-            at -= 1;
+/// Lists the slopes of pairs that change places.
+struct Listed<'a> {
+    timed: &'a Timed,
+    most: usize,
+    found: Vec<Critical>,
+}
+
+impl Passing for Listed<'_> {
+    fn passes_one(&mut self, earlier: &Place, later: &Place) {
+        if earlier.index < later.index && self.found.len() < self.most {
+            self.found.extend(self.timed.between(earlier.index as usize, later.index as usize));
         }
-        all[at] = one;
     }
-    run
+
+    fn passes(&mut self, earlier: &[Place], later: &Place) {
+        for one in earlier {
+            if self.found.len() == self.most {
+                break;
+            }
+            self.passes_one(one, later);
+        }
+    }
+}
+
+/// Only sorts.
+struct Silent;
+
+impl Passing for Silent {
+    fn passes_one(&mut self, _: &Place, _: &Place) {}
+    fn passes(&mut self, _: &[Place], _: &Place) {}
 }

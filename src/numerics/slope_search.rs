@@ -61,9 +61,13 @@ pub struct Found {
 }
 
 impl SlopeSearch {
-    /// Draws pairs, always the same ones, unless `draws` says that no place will be looked for.
-    pub fn new(groups: Vec<Timed>, all: u64, draws: bool) -> SlopeSearch {
+    /// Draws pairs, always the same ones, and sorts the points over the middle one of their slopes,
+    /// unless `draws` says that no place will be looked for.
+    pub fn new(mut groups: Vec<Timed>, all: u64, draws: bool) -> SlopeSearch {
         let drawn = if draws && all > 0 { drawn(&groups) } else { Vec::new() };
+        if let Some(&middle) = drawn.get(drawn.len() / 2) {
+            groups.iter_mut().for_each(|group| group.rest_on(middle));
+        }
         SlopeSearch { groups, all, drawn, known: Vec::new() }
     }
 
@@ -129,11 +133,12 @@ impl SlopeSearch {
             if inside <= few || width <= UNTOLD * self.resolution(range.low) {
                 break;
             }
-            // Aim a little to that side of the place on which more is left.
+            // Aim a little to that side of the place on which more is left, so that the next aim is at
+            // the other side.
             let aim = if place - range.before > range.upto - place {
-                place.saturating_sub(few / 4)
+                place.saturating_sub(few / 8)
             } else {
-                place + few / 4
+                place + few / 8
             };
             let share = (aim as f64 - range.before as f64) / inside as f64;
             let inner = share > 0.0 && share < 1.0 && count % 3 < 2;
@@ -192,11 +197,11 @@ impl SlopeSearch {
         SlopeRange { low, high, before: 0, upto: self.all }
     }
 
-    /// So much of S may be left for slopes to be listed: about as many pairs as there are points,
+    /// So much of S may be left for slopes to be listed: that of as many pairs as there are points,
     /// whether or not their order can be told.
     fn few(&self) -> u64 {
         let points: u64 = self.groups.iter().map(|group| group.len() as u64).sum();
-        (4 * self.all / points.max(1)).max(FEWEST)
+        (2 * self.all / points.max(1)).max(FEWEST)
     }
 }
 
