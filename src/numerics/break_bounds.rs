@@ -5,39 +5,46 @@ use super::broken::{Broken, stretches};
 use super::columns::columns;
 use super::first_order::FirstOrder;
 use super::information::Misfit;
+use super::normal::lower_tail;
 use super::points::{Mark, Point};
 
-/// Breaks of the grid, at most (a count). Source: one between any two dates of a record of fifteen
-/// years of quarters; the closer look finds the rest.
-const MOST_BREAKS: usize = 60;
+/// Breaks of the grid, at most (a count). Source: one at every date of a record of twenty years of
+/// quarters.
+const MOST_BREAKS: usize = 80;
 
 /// Points that the grid is laid over, at most (a count); of more, every so manieth is looked at.
+/// Source: their likelihood is as smooth as that of all.
 const MOST_POINTS: usize = 1_000;
 
-/// Steps of the closer look in one stretch (a count). Source: 0.618³⁰, half a millionth of it.
-const CLOSER_STEPS: usize = 30;
+/// Steps of a closer look, at most (a count). Source: measured; five or six arrive.
+const CLOSER_STEPS: usize = 40;
 
-/// The same where the record was thinned for the grid: a third of a per cent of a stretch, far under
-/// what so many points leave unknown.
-const STEPS_IF_THINNED: usize = 12;
+/// A closer look ends at this share of the record. Source: a second of twenty years.
+const CLOSE: f64 = 1e-9;
 
-/// The golden section (a pure number). Source: (√5 − 1)/2.
-const GOLDEN: f64 = 0.618_033_988_749_894_9;
+/// The same where the record was thinned for the grid. Source: far under what so many points leave
+/// unknown.
+const CLOSE_IF_THINNED: f64 = 1e-5;
+
+/// A closer look ends where no more than this is to be gained (log-likelihood). Source: rounding.
+const SMALL_GAIN: f64 = 1e-12;
 
 /// The broken line of greatest likelihood.
 ///
 /// # Formula
 /// ```text
 /// max over ψ of ℓ(ψ)     ℓ(ψ) = max over level, slopes and scatter
+/// ℓ′(ψ) = −b₁·Σ gᵢ (tᵢ < ψ) − b₂·Σ gᵢ (tᵢ > ψ)
 /// ```
-/// first over a grid of breaks, then by golden sections on both sides of the best of them.
+/// where `g` are the derivatives of the log-likelihood by the fitted values. Every date may be the
+/// break; between two of them there is a top where ℓ′ falls through zero.
 ///
 /// # Units
 /// Those of the points.
 ///
 /// # Limits
-/// 60 breaks on at most 1,000 points, then 2 × 30 on all, 2 × 12 where there are more. Where ℓ(ψ) has several tops the grid
-/// decides which.
+/// The grid has 80 breaks on 1,000 points at most; from the best of them a longer record is climbed in
+/// full.
 ///
 /// # Errors
 /// [`Dropped::NoRoom`]; [`Dropped::NotConverged`].
@@ -46,40 +53,34 @@ const GOLDEN: f64 = 0.618_033_988_749_894_9;
 /// Methods note 5.8. Held against [`super::break_squares::best`] where all is measured, in tests.
 pub fn best(sorted: &[Point], fit: &FirstOrder) -> Result<Broken, Dropped> {
     let (low, high) = room(sorted).ok_or(Dropped::NoRoom)?;
-    let straight = Broken {
-        break_at: low,
-        level: fit.fitted(low),
-        before: fit.slope,
-        after: fit.slope,
-        misfit: Misfit::LogLikelihood(fit.log_likelihood),
-    };
     let thin: Vec<Point> =
         sorted.iter().step_by(sorted.len().div_ceil(MOST_POINTS)).copied().collect();
+    let straight = Held {
+        broken: Broken {
+            break_at: low,
+            level: fit.fitted(low),
+            before: fit.slope,
+            after: fit.slope,
+            misfit: Misfit::LogLikelihood(fit.log_likelihood),
+        },
+        value: fit.log_likelihood,
+        scale: fit.ml_scale,
+        lean: [0.0; 2],
+    };
+    let record = Record::new(&thin);
     let breaks = grid(&thin, low, high);
     let lost = Dropped::NotConverged { steps: breaks.len() };
-    let steps = if thin.len() < sorted.len() { STEPS_IF_THINNED } else { CLOSER_STEPS };
-    let (mut top, mut near) = (0, None);
-    for (i, &at) in breaks.iter().enumerate() {
-        let broken = at_break(&thin, at, &straight, fit.ml_scale);
-        if height(&broken) > height(&near) {
-            (top, near) = (i, broken);
-        }
+    let coarse: Vec<Held> = breaks.iter().filter_map(|&at| record.held(at, &straight)).collect();
+    let closer = coarse.windows(2).filter_map(|pair| record.between(pair[0], pair[1], CLOSE));
+    let all = coarse.iter().copied().chain(closer);
+    let found = all.reduce(|best, held| if held.value > best.value { held } else { best });
+    let found = found.ok_or(lost)?;
+    if thin.len() == sorted.len() {
+        return Ok(found.broken);
     }
-    let near = near.ok_or(lost)?;
-    let mut found = at_break(sorted, breaks[top], &near, fit.ml_scale);
-    for (from, to) in [
-        (breaks[top.saturating_sub(1)], breaks[top]),
-        (breaks[top], breaks[(top + 1).min(breaks.len() - 1)]),
-    ] {
-        let start = found.unwrap_or(near);
-        if from < to {
-            let closer = golden(from, to, steps, |at| at_break(sorted, at, &start, fit.ml_scale));
-            if height(&closer) > height(&found) {
-                found = closer;
-            }
-        }
-    }
-    found.ok_or(lost)
+    let record = Record::new(sorted);
+    let step = (high - low) / breaks.len() as f64;
+    record.uphill(&found, step, low, high).map(|held| held.broken).ok_or(lost)
 }
 
 /// Breaks to try, from `low` to `high`.
@@ -89,18 +90,14 @@ fn grid(thin: &[Point], low: f64, high: f64) -> Vec<f64> {
     breaks.dedup();
     let every = breaks.len().div_ceil(MOST_BREAKS);
     let mut breaks: Vec<f64> = breaks.into_iter().step_by(every).collect();
-    breaks.push(high);
+    if low < high {
+        breaks.push(high);
+    }
     breaks
 }
 
-fn height(found: &Option<Broken>) -> f64 {
-    match found.map(|broken| broken.misfit) {
-        Some(Misfit::LogLikelihood(value)) => value,
-        _ => f64::NEG_INFINITY,
-    }
-}
-
-/// From where to where a break may lie.
+/// From where to where a break may lie: with measured values on two dates on each side, since with
+/// fewer a slope may run off to infinity under a row of non-detects.
 fn room(sorted: &[Point]) -> Option<(f64, f64)> {
     let measured: Vec<f64> =
         sorted.iter().filter(|point| point.mark == Mark::Measured).map(|point| point.t).collect();
@@ -115,58 +112,130 @@ fn room(sorted: &[Point]) -> Option<(f64, f64)> {
     Some((low, places.last().map_or(high, |(_, high)| high)))
 }
 
-fn golden(from: f64, to: f64, steps: usize, at: impl Fn(f64) -> Option<Broken>) -> Option<Broken> {
-    let (mut low, mut high) = (from, to);
-    let mut left = at(high - GOLDEN * (high - low));
-    let mut right = at(low + GOLDEN * (high - low));
-    for _ in 0..steps {
-        if height(&left) >= height(&right) {
-            high = low + GOLDEN * (high - low);
-            right = left;
-            left = at(high - GOLDEN * (high - low));
-        } else {
-            low = high - GOLDEN * (high - low);
-            left = right;
-            right = at(low + GOLDEN * (high - low));
-        }
-    }
-    if height(&left) >= height(&right) { left } else { right }
+/// A broken line with its break held, at its best.
+#[derive(Clone, Copy)]
+struct Held {
+    broken: Broken,
+    /// The log-likelihood.
+    value: f64,
+    scale: f64,
+    /// Its derivatives by the break, from the left and from the right.
+    lean: [f64; 2],
 }
 
-/// The broken line with its break at `break_at`, by likelihood, searched for from another one.
-///
-/// # Formula
-/// ```text
-/// columns 1, min(t − ψ, 0), max(t − ψ, 0) of the concave likelihood
-/// ```
-///
-/// # Units
-/// Those of the points; `scale` is a guess at the scatter.
-///
-/// # Limits
-/// As [`columns`].
-///
-/// # None
-/// As [`columns`].
-///
-/// # Reference
-/// Tobin (1958) with three columns.
-pub fn at_break(sorted: &[Point], break_at: f64, near: &Broken, scale: f64) -> Option<Broken> {
-    let span = sorted[sorted.len() - 1].t - sorted[0].t;
-    let row = |point: &Point| {
-        let off = (point.t - break_at) / span;
-        [1.0, off.min(0.0), off.max(0.0)]
-    };
-    let x: Vec<[f64; 3]> = sorted.iter().map(row).collect();
-    let y: Vec<f64> = sorted.iter().map(|point| point.y).collect();
-    let mark: Vec<Mark> = sorted.iter().map(|point| point.mark).collect();
-    let guess = [near.level, near.before * span, near.after * span];
-    let fitted = columns(&x, &y, &mark, guess, scale)?;
-    Some(Broken {
-        break_at,
-        level: fitted.factors[0],
-        before: fitted.factors[1] / span,
-        after: fitted.factors[2] / span,
-        misfit: Misfit::LogLikelihood(fitted.log_likelihood),
-    })
+/// The record in columns.
+struct Record {
+    t: Vec<f64>,
+    y: Vec<f64>,
+    mark: Vec<Mark>,
+    span: f64,
+}
+
+impl Record {
+    fn new(sorted: &[Point]) -> Record {
+        Record {
+            t: sorted.iter().map(|point| point.t).collect(),
+            y: sorted.iter().map(|point| point.y).collect(),
+            mark: sorted.iter().map(|point| point.mark).collect(),
+            span: sorted[sorted.len() - 1].t - sorted[0].t,
+        }
+    }
+
+    /// The broken line with its break at `at`, searched for from another one.
+    ///
+    /// # None
+    /// The columns do not determine the line, or the search did not end.
+    fn held(&self, at: f64, near: &Held) -> Option<Held> {
+        let row = |&t: &f64| {
+            let off = (t - at) / self.span;
+            [1.0, off.min(0.0), off.max(0.0)]
+        };
+        let x: Vec<[f64; 3]> = self.t.iter().map(row).collect();
+        let start = near.broken;
+        let guess = [start.level, start.before * self.span, start.after * self.span];
+        let fitted = columns(&x, &self.y, &self.mark, guess, near.scale)?;
+        let [level, before, after] = fitted.factors;
+        let broken = Broken {
+            break_at: at,
+            level,
+            before: before / self.span,
+            after: after / self.span,
+            misfit: Misfit::LogLikelihood(fitted.log_likelihood),
+        };
+        let mut pulls = [0.0; 3];
+        for ((x, &y), &mark) in x.iter().zip(&self.y).zip(&self.mark) {
+            let z = (y - level - before * x[1] - after * x[2]) / fitted.scale;
+            let pull = match mark {
+                Mark::Measured => z,
+                Mark::Below => -lower_tail(z).slope,
+                Mark::Above => lower_tail(-z).slope,
+            };
+            let side = if x[1] < 0.0 {
+                0
+            } else if x[2] > 0.0 {
+                2
+            } else {
+                1
+            };
+            pulls[side] += pull / fitted.scale;
+        }
+        let [left, here, right] = pulls;
+        let lean = [
+            -broken.before * left - broken.after * (here + right),
+            -broken.before * (left + here) - broken.after * right,
+        ];
+        Some(Held { broken, value: fitted.log_likelihood, scale: fitted.scale, lean })
+    }
+
+    /// The top that a walk from `from` leads to, in growing steps until one is past it.
+    fn uphill(&self, from: &Held, step: f64, low: f64, high: f64) -> Option<Held> {
+        let mut here = self.held(from.broken.break_at, from)?;
+        let side = if here.lean[1] > 0.0 { 1.0 } else { -1.0 };
+        let (behind, ahead) = if side > 0.0 { (1, 0) } else { (0, 1) };
+        let mut step = side * step;
+        while side * here.lean[behind] > 0.0 {
+            let at = (here.broken.break_at + step).clamp(low, high);
+            if at == here.broken.break_at {
+                break;
+            }
+            let next = self.held(at, &here)?;
+            if side * next.lean[ahead] < 0.0 {
+                let (left, right) = if side > 0.0 { (here, next) } else { (next, here) };
+                return self.between(left, right, CLOSE_IF_THINNED);
+            }
+            here = next;
+            step *= 2.0;
+        }
+        Some(here)
+    }
+
+    /// The top between two breaks, where the likelihood rises from the one and falls to the other:
+    /// by the false position, halved where that is slow.
+    fn between(&self, left: Held, right: Held, close: f64) -> Option<Held> {
+        let (mut low, mut high) = (left, right);
+        let (mut rising, mut falling) = (low.lean[1], high.lean[0]);
+        if !(rising > 0.0 && falling < 0.0) {
+            return None;
+        }
+        for step in 0..CLOSER_STEPS {
+            let (from, to) = (low.broken.break_at, high.broken.break_at);
+            if to - from <= close * self.span {
+                break;
+            }
+            let share = if step % 3 == 2 { 0.5 } else { rising / (rising - falling) };
+            let at = from + share.clamp(1e-3, 1.0 - 1e-3) * (to - from);
+            let near = if share < 0.5 { &low } else { &high };
+            let held = self.held(at, near)?;
+            let gain = (to - from) * held.lean[0].abs().min(held.lean[1].abs());
+            if gain < SMALL_GAIN || held.lean[0] > 0.0 && held.lean[1] < 0.0 {
+                return Some(held);
+            }
+            if held.lean[1] > 0.0 {
+                (low, rising) = (held, held.lean[1]);
+            } else {
+                (high, falling) = (held, held.lean[0]);
+            }
+        }
+        Some(if low.value > high.value { low } else { high })
+    }
 }

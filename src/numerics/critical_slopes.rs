@@ -98,11 +98,6 @@ impl CriticalSlopes {
         self.falls
     }
 
-    /// S between the slopes next to `m`: what is lost under `m` taken from its highest.
-    pub fn score(&self, m: f64) -> i64 {
-        self.rises as i64 - self.search.lost_under(m) as i64
-    }
-
     /// The slopes at which S is zero, or the one where it passes zero.
     ///
     /// # Formula

@@ -57,7 +57,7 @@ pub struct Curvature {
 /// did not end; `straight` fitted to other points.
 ///
 /// # Reference
-/// Draper & Smith (1998), ch. 12; methods note 5.6. Worked examples W02 and W17, R `lm` on nine
+/// Draper & Smith (1998), ch. 12 [from memory]; methods note 5.6. Worked examples W02 and W17, R `lm` on nine
 /// invented series.
 pub fn curvature(points: Points<'_>, straight: &FirstOrder) -> Option<Curvature> {
     if points.len() != straight.n || measured_times(points) < DATES_NEEDED {

@@ -39,7 +39,8 @@ pub struct KruskalWallis {
 /// Fewer than two groups, all values equal, or slices of different length.
 ///
 /// # Reference
-/// Kruskal & Wallis (1952), J. Am. Stat. Assoc. 47:583–621. Worked examples W06, W07 and W12.
+/// Kruskal & Wallis (1952), J. Am. Stat. Assoc. 47:583–621 [from memory]. Worked
+/// examples W06, W07 and W12.
 pub fn kruskal_wallis(values: &[f64], groups: &[usize]) -> Option<KruskalWallis> {
     if values.len() != groups.len() {
         return None;

@@ -79,7 +79,8 @@ pub struct SeasonalKendall {
 ///
 /// # Reference
 /// Hirsch, Slack & Smith (1982), Water Resour. Res. 18:107–121; van Belle & Hughes (1984), Water
-/// Resour. Res. 20:127–136; Gilbert (1987), p. 227 [second hand]. Worked example W06.
+/// Resour. Res. 20:127–136 [both from memory]; Gilbert (1987), p. 227 [second hand]. Worked example
+/// W06.
 pub fn seasonal_kendall(
     t: &[f64],
     y: &[f64],

@@ -18,8 +18,8 @@ const ONE_CORRECTED: usize = 5;
 /// (1995).
 const SMALL: usize = 11;
 
-/// Share of the mean square of the values that the place of a rank is moved in by: plotting
-/// positions (i − 3/8)/(n + 1/4). Source: Blom (1958), as Royston (1995) takes them.
+/// Plotting positions: the i-th of n values stands at (i − 3/8)/(n + 1/4) (pure numbers). Source:
+/// Blom (1958) [from memory], as Royston (1995) takes them; methods note 5.3.
 const BLOM: [f64; 2] = [0.375, 0.25];
 
 /// Correction of the outermost coefficient, in powers of 1/√n, lowest first (pure numbers). Source:

@@ -137,8 +137,10 @@ impl Sorted {
     fn ranked(&self, rank: u64) -> f64 {
         let few = 4 * self.y.len() as u64;
         // Fewer than `rank` slopes lie under `low`, `rank` or more under `high`.
-        let (mut low, mut below_low) = (self.lowest, 0);
-        let mut high = self.highest + (self.highest - self.lowest).max(f64::MIN_POSITIVE);
+        // Neither starts on an outermost slope, where rounding decides on which side it is.
+        let width = (self.highest - self.lowest).max(f64::MIN_POSITIVE);
+        let (mut low, mut below_low) = (self.lowest - width, 0);
+        let mut high = self.highest + width;
         let mut below_high = u64::MAX;
         for _ in 0..MOST_HALVINGS {
             let middle = low + 0.5 * (high - low);

@@ -1,6 +1,8 @@
 //! The one integration binary.
 #![allow(clippy::print_stdout, reason = "trials print their figures and say when they skip")]
 
+#[path = "../bench/mod.rs"]
+mod bench;
 mod cli;
 mod deliver;
 mod demo;
@@ -9,4 +11,5 @@ mod numerics;
 mod real;
 mod site;
 mod structure;
+mod whole_runs;
 mod words;

@@ -102,11 +102,12 @@ fn entry(lines: &mut Lines, findings: &Findings, series: &SeriesFinding) {
         )
     });
     lines.hanging(&rate, 4, 6);
-    if let Some(date) = date(series) {
-        lines.hanging(&date, 4, 6);
-    }
+    // What denies a date is told before the date.
     if let Some(denial) = doubt::denial(series) {
         lines.hanging(&denial, 4, 6);
+    }
+    if let Some(date) = date(series) {
+        lines.hanging(&date, 4, 6);
     }
     let doubts: Vec<&str> = series
         .flags

@@ -6,7 +6,8 @@ use approx::assert_relative_eq;
 use ebbwell::numerics::alternatives::in_time_order;
 use ebbwell::numerics::break_squares::{at_break, best};
 use ebbwell::numerics::broken::stretches;
-use ebbwell::numerics::{Dropped, Mark, Misfit, break_bounds, compare};
+use ebbwell::numerics::columns::columns;
+use ebbwell::numerics::{Dropped, Mark, Misfit, Point, break_bounds, compare};
 use proptest::prelude::*;
 
 use super::support::{Random, Series};
@@ -84,8 +85,76 @@ proptest! {
         let fit = bounded.fitted();
         let found = break_bounds::best(&in_time_order(bounded.points()), &fit).expect("room");
         let Misfit::LogLikelihood(value) = found.misfit else { panic!("{found:?}") };
-        prop_assert!((value - likely(rss(squares.misfit), n)).abs() < 1e-5, "{found:?} {squares:?}");
-        prop_assert!((found.break_at - squares.break_at).abs() < 1e-3, "{found:?} {squares:?}");
+        prop_assert!((value - likely(rss(squares.misfit), n)).abs() < 1e-8, "{found:?} {squares:?}");
+        prop_assert!((found.break_at - squares.break_at).abs() < 1e-5, "{found:?} {squares:?}");
+    }
+}
+
+/// Source: the likelihood itself at 300 breaks over the record, a third of it non-detects: none is
+/// higher.
+#[test]
+fn with_bounds_no_break_of_a_fine_grid_is_better() {
+    let mut random = Random(300);
+    let mut tried = 0;
+    for _ in 0..150 {
+        let series = random.series(0.35);
+        let Ok(fit) = series.fit() else { continue };
+        let sorted = in_time_order(series.points());
+        if series.points().all_measured() {
+            continue;
+        }
+        let Ok(found) = break_bounds::best(&sorted, &fit) else { continue };
+        let Misfit::LogLikelihood(best) = found.misfit else { panic!("{found:?}") };
+        tried += 1;
+        let y: Vec<f64> = sorted.iter().map(|point| point.y).collect();
+        let mark: Vec<Mark> = sorted.iter().map(|point| point.mark).collect();
+        let measured: Vec<f64> = sorted
+            .iter()
+            .filter(|point| point.mark == Mark::Measured)
+            .map(|point| point.t)
+            .collect();
+        let (first, last) = (sorted[0].t, sorted[sorted.len() - 1].t);
+        for i in 0..=300 {
+            let at = first + (last - first) * f64::from(i) / 300.0;
+            let room = stretches(&sorted).any(|(_, low, high)| low <= at && at <= high);
+            if !room || at < measured[1] || at > measured[measured.len() - 2] {
+                continue;
+            }
+            let row = |point: &Point| {
+                let off = point.t - at;
+                [1.0, off.min(0.0), off.max(0.0)]
+            };
+            let x: Vec<[f64; 3]> = sorted.iter().map(row).collect();
+            let guess = [fit.fitted(at), fit.slope, fit.slope];
+            if let Some(other) = columns(&x, &y, &mark, guess, fit.ml_scale) {
+                assert!(other.log_likelihood <= best + 1e-8, "{at} is better than {found:?}");
+            }
+        }
+    }
+    assert!(tried > 80, "{tried}");
+}
+
+/// Source: least squares on 20,000 dates: the search that looks at every twentieth point first
+/// arrives at the same break.
+#[test]
+fn a_long_record_with_one_bound_has_the_break_of_least_squares() {
+    let n = 20_000;
+    let mut random = Random(6);
+    let t: Vec<f64> = (0..n).map(|i| i as f64 / 1000.0).collect();
+    for (before, after) in [(-0.1, -0.5), (-0.6, -0.05)] {
+        let mean = |t: f64| 6.0 + before * (t - 8.0).min(0.0) + after * (t - 8.0).max(0.0);
+        let y: Vec<f64> = t.iter().map(|&t| mean(t) + 0.4 * random.normal()).collect();
+        let mut series = Series::measured(&t, &y);
+        let fit = series.fitted();
+        let squares = best(&in_time_order(series.points()), &fit).expect("room");
+        series.t.push(10.0);
+        series.y.push(1e3);
+        series.mark.push(Mark::Below);
+        let fit = series.fitted();
+        let found = break_bounds::best(&in_time_order(series.points()), &fit).expect("room");
+        let Misfit::LogLikelihood(value) = found.misfit else { panic!("{found:?}") };
+        assert!((value - likely(rss(squares.misfit), n)).abs() < 1e-3, "{found:?} {squares:?}");
+        assert!((found.break_at - squares.break_at).abs() < 1e-3, "{found:?} {squares:?}");
     }
 }
 
@@ -112,8 +181,9 @@ fn a_hundred_thousand_dates_are_compared_in_a_moment() {
         let start = Instant::now();
         let found = compare(series.points(), &fit);
         let took = start.elapsed();
-        // Three times what was measured on a slow core, so that a busy one does not fail it.
-        assert!(took.as_secs_f64() < if bounds { 3.0 } else { 0.5 }, "{took:?}");
+        // Measured: 0.1 and 0.5 seconds. Twenty times that lets a busy machine pass, and no search
+        // that looks at every pair.
+        assert!(took.as_secs_f64() < if bounds { 10.0 } else { 2.0 }, "{took:?}");
         let plateau = found.plateau.expect("a plateau");
         assert_relative_eq!(plateau.ln_plateau, 5f64.ln(), epsilon = 0.02);
         assert_relative_eq!(plateau.rate, 0.6, epsilon = 0.02);

@@ -51,7 +51,11 @@ fn w14_slope() {
     printed(found.zero.low, -0.7901277180, 10);
     printed(found.zero.high, -0.7887003385, 10);
     printed(found.slope, -0.7894140, 7);
-    assert_relative_eq!(found.slope, 0.5 * (found.zero.low + found.zero.high), max_relative = 1e-15);
+    assert_relative_eq!(
+        found.slope,
+        0.5 * (found.zero.low + found.zero.high),
+        max_relative = 1e-15
+    );
     assert_eq!(score_over(&series, found.slope), 0);
     let Ends { low: Some(low), high: Some(high) } = found.ends else { panic!("both ends") };
     // The trend of the residuals is significant a little outside of the ends, and not inside.

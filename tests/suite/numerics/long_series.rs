@@ -55,7 +55,10 @@ fn theil_and_sen_by_counting_are_all_pairs() {
     let middle = 0.5 * count as f64;
     assert_relative_eq!(ends.low, at(middle - half), max_relative = 1e-9);
     assert_relative_eq!(ends.high, at(middle + half + 1.0), max_relative = 1e-9);
-    assert_eq!(mann_kendall(&series.t, &series.y).expect("3,000").s, brute_score(&series.t, &series.y));
+    assert_eq!(
+        mann_kendall(&series.t, &series.y).expect("3,000").s,
+        brute_score(&series.t, &series.y)
+    );
 }
 
 /// Source: the slope by all pairs of 1,200 points, with 40 % bounds.
@@ -94,8 +97,7 @@ fn a_hundred_thousand_dates_are_worked_through() {
     assert!(score_over(&censored, found.slope).abs() <= 2, "{found:?}");
     for (end, sign) in [(found.ends.low, 1.0), (found.ends.high, -1.0)] {
         let end = end.expect("many pairs");
-        let left: Vec<f64> =
-            censored.t.iter().zip(&censored.y).map(|(t, y)| y - end * t).collect();
+        let left: Vec<f64> = censored.t.iter().zip(&censored.y).map(|(t, y)| y - end * t).collect();
         let left = Points::new(&censored.t, &left, &censored.mark).expect("finite");
         let test = certain_pairs(left).expect("many points");
         let z = test.s as f64 / test.variance.sqrt();

@@ -22,6 +22,7 @@ mod normality_and_groups;
 mod plateau_search;
 mod points_and_refusals;
 mod promises_of_models;
+mod promises_of_tests;
 mod properties;
 mod real_series;
 mod resemblance_and_bend;
