@@ -17,6 +17,17 @@ pub fn model(model: Model) -> &'static str {
     }
 }
 
+/// What a model says of the data.
+#[must_use]
+pub fn model_meaning(model: Model) -> &'static str {
+    match model {
+        Model::Constant => "A model without any change over time. It is shown and never preferred.",
+        Model::FirstOrder => "One first-order rate over the whole window.",
+        Model::Plateau => "Decay to a level that stays.",
+        Model::TwoRates => "One rate until a break, another after it.",
+    }
+}
+
 /// Why a model is not offered.
 #[must_use]
 pub fn why_no_model(why: WhyNoModel) -> &'static str {

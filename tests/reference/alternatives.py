@@ -150,6 +150,14 @@ def main():
             write(case, "plateau_misfit", misfit)
             for what, value in zip(("plateau_error", "height_error", "rate_error"), errors or []):
                 write(case, what, value)
+            if any(m):
+                value, x = Problem([(yi, -1) for yi in y], m).maximum([mp.mpf(1), mp.mpf(2)])
+                level = x[1] / x[0]
+            else:
+                level = sum(y) / len(y)
+                value = sum((yi - level) ** 2 for yi in y)
+            write(case, "constant_level", level)
+            write(case, "constant_misfit", value)
             # The top lies between two neighbouring dates, found by a look at every stretch.
             inside = [(a, b) for a, b in zip(t[4:-5], t[5:-4])]
             found = max((two_rates_value(t, y, m, a, b), a, b) for a, b in inside)

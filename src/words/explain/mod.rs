@@ -8,6 +8,7 @@ pub mod coded;
 pub mod summary_columns;
 pub mod table_columns;
 pub mod statistics;
+pub mod refits;
 pub mod terms;
 
 use crate::terms::folded;
@@ -119,6 +120,8 @@ pub fn all() -> Vec<Entry> {
     let mut entries = coded::entries();
     entries.extend(terms::TERMS);
     entries.extend(statistics::STATISTICS);
+    entries.extend(refits::REFITS);
+    entries.extend(refits::coded());
     entries.extend(summary_columns::SUMMARY);
     entries.extend(table_columns::OTHERS);
     entries.sort_by_key(|entry| Kind::ALL.iter().position(|kind| *kind == entry.kind));

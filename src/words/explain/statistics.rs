@@ -2,7 +2,7 @@
 
 use super::{Entry, Kind, OURS};
 
-const fn statistic(
+pub(super) const fn statistic(
     word: &'static str,
     meaning: &'static str,
     formula: &'static str,

@@ -166,6 +166,9 @@ fn the_tailing_series_agrees_with_forty_digit_values() {
                 agree(what, error, ERRORS);
             }
         }
+        let constant = found.constant.expect("a constant level");
+        agree("constant_level", constant.level, PARAMETERS);
+        agree("constant_misfit", misfit(constant.misfit), 1e-9);
         agree("break_at", broken.break_at, PARAMETERS);
         agree("level", broken.level, PARAMETERS);
         agree("before", broken.before, PARAMETERS);

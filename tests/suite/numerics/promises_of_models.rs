@@ -151,6 +151,8 @@ proptest! {
             }
             if let Ok(plateau) = found.plateau {
                 prop_assert!(misfit(plateau.misfit) <= line + slack, "{found:?}");
+                // A rate that is not known within a factor of twenty is no rate.
+                prop_assert!(plateau.errors[2] < 3.0, "{found:?}");
             }
         }
     }
@@ -175,6 +177,11 @@ proptest! {
             if same(one.aicc, two.aicc, 1e-7) {
                 let near = 1e-4 * one.errors[0];
                 prop_assert!((two.ln_plateau - up - one.ln_plateau).abs() <= near.max(1e-7));
+                for t in [series.t[0], series.t[series.t.len() - 1] + 5.0] {
+                    let off = two.fitted(t + later) - up - one.fitted(t);
+                    prop_assert!(off.abs() <= 1e-4 * one.errors[0].max(one.errors[2]) + 1e-7);
+                }
+                prop_assert!(same(one.errors[2], two.errors[2], 1e-3));
                 let (a, b) = (one.crossing(y0), two.crossing(y0 + up));
                 prop_assert!(a.is_some() == b.is_some() || (one.ln_plateau - y0).abs() < 1e-5);
             }

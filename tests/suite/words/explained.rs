@@ -2,7 +2,9 @@
 
 use ebbwell::deliver::tables;
 use ebbwell::ledger::{Merged, NonResult, Outcome, QualityControl, SetAside, UsedAs};
-use ebbwell::terms::{FlagCode, Method, Pace, Verdict, WhyNoDate, WhyNoRate};
+use ebbwell::terms::{
+    ChoiceKind, FlagCode, Method, Model, Pace, Verdict, WhyNoDate, WhyNoModel, WhyNoRate,
+};
 use ebbwell::words::explain::{Kind, all, find, nearest};
 
 #[test]
@@ -20,6 +22,10 @@ fn every_word_of_every_closed_list_is_explained() {
         .chain(codes(Kind::Reason, NonResult::ALL.iter().map(|v| v.code()).collect()))
         .chain(codes(Kind::Reason, QualityControl::ALL.iter().map(|v| v.code()).collect()))
         .chain(codes(Kind::Reason, SetAside::ALL.iter().map(|v| v.code()).collect()));
+    let wanted = wanted
+        .chain(codes(Kind::Statistic, Model::ALL.iter().map(|v| v.code()).collect()))
+        .chain(codes(Kind::Statistic, WhyNoModel::ALL.iter().map(|v| v.code()).collect()))
+        .chain(codes(Kind::Statistic, ChoiceKind::ALL.iter().map(|v| v.code()).collect()));
     for (kind, code) in wanted {
         let hits = find(code);
         assert!(hits.iter().any(|entry| entry.kind == kind && entry.word == code), "{code}");
@@ -69,6 +75,11 @@ fn the_terms_and_procedures_of_the_documentation_are_explained() {
         "ledger",
         "decision",
         "confidence",
+        "censored-kendall",
+        "akritas-theil-sen",
+        "decay-to-plateau",
+        "broken-line",
+        "most-telling",
     ] {
         assert!(!find(word).is_empty(), "{word}");
     }
