@@ -2,6 +2,8 @@
 
 use chrono::NaiveDate;
 
+use super::basis;
+use super::cell::{ResultCell, cell};
 use super::date::{DateText, date};
 use super::names::{Names, day_number};
 use super::number::number;
@@ -11,11 +13,11 @@ use super::sample_type::{non_result, sample_type};
 use super::split::Line;
 use super::table::Table;
 use super::texts::Texts;
-use super::value::{ResultCell, Said, reading, result_cell};
+use super::value::{Said, reading};
 use crate::ledger::told::Expected;
 use crate::ledger::{Fate, NonResult, QualityControl, SetAside, Told};
 use crate::site::{Column, DecisionKind, ResultsRule, SampleType, Site};
-use crate::terms::Unit;
+use crate::terms::{Unit, UnitText};
 
 /// Reads the records of one table.
 pub struct RecordReader<'a> {
@@ -45,6 +47,9 @@ impl RecordReader<'_> {
         let mut told = Vec::new();
         let written = self.written(line, texts);
         let read_date = self.date(line, texts.text(written.date));
+        if read_date == Err(Fate::SetAside(SetAside::AmbiguousDate)) {
+            told.push(Told::AmbiguousDates { file: self.table.name.clone() });
+        }
         let (day, time) = match &read_date {
             Ok((day, time)) => (Some(*day), texts.code(time)),
             Err(_) => (None, 0),
@@ -180,11 +185,12 @@ impl RecordReader<'_> {
         texts: &mut Texts,
         told: &mut Vec<Told>,
     ) -> Result<(), Fate> {
-        let marks = self.marks(line, row, day, texts, told)?;
+        let written = cell(texts.text(row.written.result), self.table.numbers);
+        let cell = written.result;
+        let marks = self.marks(line, row, day, &written.codes, texts, told)?;
         row.estimated = marks.estimated;
         row.dilution = marks.dilution;
         row.qualified_by = marks.decided_by;
-        let cell = result_cell(texts.text(row.written.result), self.table.numbers);
         if cell == ResultCell::Unreadable {
             let found = texts.text(row.written.result).to_owned();
             told.push(Told::Unreadable { column: "result", found, expected: Expected::Result });
@@ -198,7 +204,7 @@ impl RecordReader<'_> {
         if nothing {
             return Err(Fate::SetAside(SetAside::NoResult));
         }
-        let unit = self.unit(line, row, texts, told)?;
+        let unit = self.unit(line, row, written.unit.as_ref(), texts, told)?;
         row.unit = Some(unit);
         row.reporting_limit = self.limit(line, Column::ReportingLimit, unit, told);
         row.detection_limit = self.limit(line, Column::DetectionLimit, unit, told);
@@ -222,17 +228,33 @@ impl RecordReader<'_> {
         read.map(|_| ())
     }
 
-    /// The result's unit; a non-detect without one takes its limit's.
+    /// The result's unit: the one in its cell, else its column's; a non-detect without one takes
+    /// its limit's.
     fn unit(
         &self,
         line: &Line,
         row: &mut Row,
+        in_cell: Option<&UnitText>,
         texts: &mut Texts,
         told: &mut Vec<Told>,
     ) -> Result<Unit, Fate> {
         let units = &self.table.mapping.units;
         let text = texts.text(row.written.unit).to_owned();
-        let column_basis = texts.code(self.table.cell(line, Column::Basis));
+        let column_basis = texts.code(basis::bare(self.table.cell(line, Column::Basis)));
+        if let Some(own) = in_cell {
+            let column = if text.is_empty() {
+                units.get(&Column::Result).copied()
+            } else {
+                Unit::read(&text).map(|read| read.unit)
+            };
+            let agree = column.map_or(text.is_empty(), |column| column == own.unit);
+            if !agree {
+                told.push(Told::UnitsDiffer { cell: own.unit.label(), column: text });
+                return Err(Fate::SetAside(SetAside::UnknownUnit));
+            }
+            row.basis = own.basis.as_ref().map_or(column_basis, |basis| texts.code(basis));
+            return Ok(own.unit);
+        }
         if text.is_empty() {
             row.basis = column_basis;
             let of = |column: &Column| units.get(column).copied();

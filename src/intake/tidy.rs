@@ -2,6 +2,7 @@
 
 use polars::prelude::DataFrame;
 
+use super::date_order::evidence;
 use super::depths;
 use super::frame::{FrameError, frame};
 use super::names::{Names, unite_spellings};
@@ -12,7 +13,7 @@ use super::source::{Collected, Sources, collect};
 use super::table::{Table, table};
 use super::texts::Texts;
 use crate::ledger::{FileFacts, Ledger, MappingFacts, TableProblem, Told, Unreadable};
-use crate::site::{ResultsRule, Site};
+use crate::site::{Column, ResultsRule, Site};
 
 /// Every record of every file in canonical columns and units, with its provisional fate.
 #[derive(Clone, Debug)]
@@ -134,6 +135,15 @@ fn describe(table: &Table, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>
         if column.is_empty() {
             told.push(Told::ColumnNotUsed { file: table.name.clone(), column: header(at) });
         }
+    }
+    let dates = table.lines.iter().map(|line| table.cell(line, Column::Date));
+    let evidence = evidence(dates);
+    if evidence.is_mixed() {
+        told.push(Told::MixedDates {
+            file: table.name.clone(),
+            day_first: evidence.day_first,
+            month_first: evidence.month_first,
+        });
     }
     if let Some(line) = table.guessed_at_line {
         told.push(Told::DecodedWindows1252 { file: table.name.clone(), line });

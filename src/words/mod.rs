@@ -14,6 +14,7 @@ pub mod flag_sentence;
 pub mod reason;
 pub mod fate;
 pub mod fate_rules;
+mod told_arrival;
 pub mod told;
 pub mod caution;
 pub mod round;

@@ -2,6 +2,7 @@
 
 use super::clean::shown;
 use super::number::counted;
+use super::told_arrival;
 use crate::findings::Note;
 use crate::ledger::Told;
 use crate::ledger::told::Expected;
@@ -16,6 +17,10 @@ pub fn sentence(told: &Told, records: usize) -> String {
         | Told::ColumnNotUsed { .. }
         | Told::FileLeftAlone { .. }
         | Told::FileWithoutRecords { .. }
+        | Told::WellTwins { .. }
+        | Told::MixedDates { .. }
+        | Told::OpenLayout { .. }
+        | Told::NoLimitColumns { .. }
         | Told::SettingOffDefault { .. } => text,
         _ if records == 0 => text,
         _ => format!("{}: {text}", counted(records, "record", "records")),
@@ -85,6 +90,18 @@ pub fn detail(told: &Told) -> String {
             format!("sample type `{}` is neither known nor mapped", shown(written))
         }
         Told::UnknownUnit { written } => format!("unit `{}` is not known", shown(written)),
+        Told::UnitsDiffer { .. }
+        | Told::BasisTaken { .. }
+        | Told::CasRestored { .. }
+        | Told::CasAgainstName { .. }
+        | Told::WellTwins { .. }
+        | Told::MixedDates { .. }
+        | Told::OpenLayout { .. }
+        | Told::NoLimitColumns { .. }
+        | Told::NoDetectionLimit { .. }
+        | Told::LimitTypeUnknown { .. }
+        | Told::LimitUnit { .. }
+        | Told::LimitJoined { .. } => told_arrival::detail(told),
         Told::AmbiguousDates { file } => format!(
             "{}: day and month could be either way round; `date-order` under [[results]] settles it",
             shown(file)
@@ -155,6 +172,8 @@ pub fn weight(told: &Told) -> u8 {
         | Told::AnalyteJoined { .. }
         | Told::WellAlias { .. }
         | Told::LimitsDiffer
+        | Told::OpenLayout { .. }
+        | Told::LimitJoined { .. }
         | Told::FileLeftAlone { .. } => 0,
         Told::CasCheckDigit { .. }
         | Told::WellNotListed { .. }
@@ -162,6 +181,9 @@ pub fn weight(told: &Told) -> u8 {
         | Told::HoldingTime
         | Told::UnderDetectableActivity
         | Told::DetectionLimitTaken
+        | Told::CasRestored { .. }
+        | Told::BasisTaken { .. }
+        | Told::NoDetectionLimit { .. }
         | Told::ColumnNotUsed { .. } => 1,
         Told::DecodedWindows1252 { .. }
         | Told::FractionUnknown { .. }
@@ -170,12 +192,19 @@ pub fn weight(told: &Told) -> u8 {
         | Told::Recensored
         | Told::FileWithoutRecords { .. }
         | Told::SettingOffDefault { .. }
+        | Told::CasAgainstName { .. }
+        | Told::WellTwins { .. }
+        | Told::MixedDates { .. }
+        | Told::NoLimitColumns { .. }
+        | Told::LimitTypeUnknown { .. }
+        | Told::LimitUnit { .. }
         | Told::Revised { .. } => 2,
         Told::AnalyteNotListed { .. }
         | Told::UnknownQualifier { .. }
         | Told::UnknownCondition { .. }
         | Told::UnknownSampleType { .. }
         | Told::UnknownUnit { .. }
+        | Told::UnitsDiffer { .. }
         | Told::AmbiguousDates { .. }
         | Told::Unreadable { .. } => 3,
     }

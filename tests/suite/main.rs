@@ -4,6 +4,7 @@
 mod cli;
 mod demo;
 mod intake;
+mod intake_open;
 mod numerics;
 mod real;
 mod site;
