@@ -1,5 +1,23 @@
 //! What a number counts: `as N` of a speciation column, and a basis that only the listing states.
 
+use super::record::RecordReader;
+use super::rows::Row;
+use crate::ledger::Told;
+
+impl RecordReader<'_> {
+    /// One CAS number serves nitrate as N and as NO3: a result that does not say which counts as
+    /// the listing says, and that is told.
+    pub(super) fn tell_basis(&self, row: &Row, told: &mut Vec<Told>) {
+        let listed = row.listed.map(|at| &self.site.analytes[at]);
+        if let Some(analyte) = listed
+            && row.basis == 0
+            && let Some(basis) = &analyte.basis
+        {
+            told.push(Told::BasisTaken { analyte: analyte.name.clone(), basis: basis.clone() });
+        }
+    }
+}
+
 /// The bare basis of a cell: `as N` and `N` are one.
 #[must_use]
 pub fn bare(text: &str) -> &str {

@@ -29,7 +29,7 @@ pub enum DateText {
 }
 
 /// The years in which groundwater was sampled and this program is used.
-const YEARS: std::ops::RangeInclusive<i32> = 1900..=2200;
+pub const YEARS: std::ops::RangeInclusive<i32> = 1900..=2200;
 
 /// Reads a date cell.
 #[must_use]

@@ -5,6 +5,7 @@ use chrono::NaiveDate;
 use super::basis;
 use super::cell::{ResultCell, cell};
 use super::date::{DateText, date};
+use super::limit_table::LimitTables;
 use super::names::{Names, day_number};
 use super::number::number;
 use super::qualifier::Strictest;
@@ -29,6 +30,8 @@ pub struct RecordReader<'a> {
     pub table: &'a Table,
     /// The file's place in the run.
     pub file: u32,
+    /// The detection-limit tables beside it.
+    pub limits: &'a LimitTables,
 }
 
 /// A row, its provisional fate, and what is told about it.
@@ -78,6 +81,7 @@ impl RecordReader<'_> {
             dilution: Dilution::None,
             excluded_by: None,
             qualified_by: None,
+            joined_by: resolved.joined_by,
         };
         row.excluded_by = self.decided(DecisionKind::Exclude, &row, day, texts);
         let kind = self.kind(line, texts.text(written.result), &mut told);
@@ -204,10 +208,25 @@ impl RecordReader<'_> {
         if nothing {
             return Err(Fate::SetAside(SetAside::NoResult));
         }
-        let unit = self.unit(line, row, written.unit.as_ref(), texts, told)?;
+        let typed = self.typed_limits(line, told);
+        let not_detected = matches!(cell, ResultCell::Below(_) | ResultCell::NotDetected)
+            || marks.strictest == Some(Strictest::NonDetect);
+        let own_value = matches!(cell, ResultCell::Below(_) | ResultCell::Number(_));
+        if not_detected && !own_value && row.written.reporting_limit == 0 && typed.is_empty() {
+            // Without a unit too, it is the limit that would bring one.
+            return Err(marks.unknown.unwrap_or(Fate::SetAside(SetAside::NoReportingLimit)));
+        }
+        let limit_unit = typed.unit().filter(|_| not_detected);
+        let unit = self.unit(line, row, (written.unit.as_ref(), limit_unit), texts, told)?;
         row.unit = Some(unit);
-        row.reporting_limit = self.limit(line, Column::ReportingLimit, unit, told);
-        row.detection_limit = self.limit(line, Column::DetectionLimit, unit, told);
+        self.tell_basis(row, told);
+        if row.written.reporting_limit == 0 {
+            let shown = typed.shown(texts.text(row.written.unit));
+            row.written.reporting_limit = texts.code(&shown);
+        }
+        let [reporting, detection] = typed.in_unit(unit, told);
+        row.reporting_limit = self.limit(line, Column::ReportingLimit, unit, told).or(reporting);
+        row.detection_limit = self.limit(line, Column::DetectionLimit, unit, told).or(detection);
         let uncertainty = number(self.table.cell(line, Column::Uncertainty), self.table.numbers)
             .filter(|uncertainty| *uncertainty > 0.0)
             .zip(self.rule.uncertainty);
@@ -234,7 +253,7 @@ impl RecordReader<'_> {
         &self,
         line: &Line,
         row: &mut Row,
-        in_cell: Option<&UnitText>,
+        (in_cell, of_limit): (Option<&UnitText>, Option<&str>),
         texts: &mut Texts,
         told: &mut Vec<Told>,
     ) -> Result<Unit, Fate> {
@@ -255,14 +274,19 @@ impl RecordReader<'_> {
             row.basis = own.basis.as_ref().map_or(column_basis, |basis| texts.code(basis));
             return Ok(own.unit);
         }
-        if text.is_empty() {
-            row.basis = column_basis;
-            let of = |column: &Column| units.get(column).copied();
-            return of(&Column::Result)
-                .or_else(|| of(&Column::ReportingLimit))
-                .or_else(|| of(&Column::DetectionLimit))
-                .ok_or(Fate::SetAside(SetAside::NoUnit));
-        }
+        let of = |column: &Column| units.get(column).copied();
+        let in_header = of(&Column::Result)
+            .or_else(|| of(&Column::ReportingLimit))
+            .or_else(|| of(&Column::DetectionLimit));
+        let text = match (text.is_empty(), in_header, of_limit) {
+            (false, ..) => text,
+            (true, Some(unit), _) => {
+                row.basis = column_basis;
+                return Ok(unit);
+            }
+            (true, None, Some(of_limit)) => of_limit.to_owned(),
+            (true, None, None) => return Err(Fate::SetAside(SetAside::NoUnit)),
+        };
         let in_water = match text.to_ascii_lowercase().as_str() {
             "ppb" if self.rule.ppb_in_water => Some(Unit::UG_PER_L),
             "ppm" if self.rule.ppb_in_water => Some(Unit::MG_PER_L),

@@ -97,4 +97,6 @@ pub struct Row {
     pub excluded_by: Option<u16>,
     /// The decision that says what its qualifiers mean.
     pub qualified_by: Option<u16>,
+    /// The decision that joined its well to another.
+    pub joined_by: Option<u16>,
 }

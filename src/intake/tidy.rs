@@ -2,6 +2,7 @@
 
 use polars::prelude::DataFrame;
 
+use super::companions::{Companion, Companions};
 use super::date_order::evidence;
 use super::depths;
 use super::frame::{FrameError, frame};
@@ -10,9 +11,13 @@ use super::record::RecordReader;
 use super::repeats;
 use super::rows::Row;
 use super::source::{Collected, Sources, collect};
+use super::stations::Station;
 use super::table::{Table, table};
 use super::texts::Texts;
-use crate::ledger::{FileFacts, Ledger, MappingFacts, TableProblem, Told, Unreadable};
+use super::twins::twins;
+use crate::ledger::{
+    Fate, FileFacts, Ledger, MappingFacts, Merged, SetAside, TableProblem, Told, Unreadable,
+};
 use crate::site::{Column, ResultsRule, Site};
 
 /// Every record of every file in canonical columns and units, with its provisional fate.
@@ -34,6 +39,8 @@ pub struct Tidy {
     pub mapping: Vec<MappingFacts>,
     /// What is told about whole files.
     pub told: Vec<Told>,
+    /// Where wells stand, from station files.
+    pub stations: Vec<Station>,
     /// How many records each decision touched, in the order of the site file.
     pub decided: Vec<usize>,
 }
@@ -62,12 +69,31 @@ pub fn tidy(
         (Texts::default(), Ledger::default(), Names::default());
     let (mut rows, mut files, mut mapping, mut told) =
         (Vec::new(), Vec::new(), Vec::new(), Vec::new());
-    for file in found {
+    let mut companions = Companions::read(&found, site);
+    let mut limit_records = Vec::new();
+    for (at, file) in found.into_iter().enumerate() {
         if !between(&file.name) {
             return Ok(None);
         }
         let plain = ResultsRule::plain();
         let rule = site.results.get(file.rule).unwrap_or(&plain);
+        let place = u32::try_from(files.len()).unwrap_or(u32::MAX);
+        if let Some(companion) = companions.at(at) {
+            for row in companion.rows(place, site, &mut texts) {
+                match companion.kind {
+                    Companion::Limits => {
+                        limit_records.push(ledger.open(Fate::SetAside(SetAside::UnmatchedLimit)));
+                    }
+                    Companion::Stations => {
+                        ledger.open(Fate::Merged(Merged::Station));
+                    }
+                }
+                rows.push(row);
+            }
+            mapping.extend(companion.mapping(&file.name));
+            files.push(companion.facts(file));
+            continue;
+        }
         let table = match table(&file, rule) {
             Ok(table) => table,
             Err(problem) => {
@@ -75,8 +101,9 @@ pub fn tidy(
                 continue;
             }
         };
-        let place = u32::try_from(files.len()).unwrap_or(u32::MAX);
-        let reader = RecordReader { site, rule, table: &table, file: place };
+        let joined = companions.limits.note(&table);
+        let limits = &companions.limits;
+        let reader = RecordReader { site, rule, table: &table, file: place, limits };
         for line in &table.lines {
             let read = reader.read(line, &mut names, &mut texts);
             let record = ledger.open(read.fate);
@@ -93,8 +120,14 @@ pub fn tidy(
             blank_lines: table.blank,
             encoding: table.encoding,
         });
-        describe(&table, &mut mapping, &mut told);
+        describe(&table, joined, &mut mapping, &mut told);
     }
+    for (record, matched) in limit_records.into_iter().zip(companions.limits.matched()) {
+        if *matched {
+            ledger.amend(record, Fate::Merged(Merged::DetectionLimit));
+        }
+    }
+    told.extend(twins(&rows, &texts));
     unite_spellings(&mut rows, &texts);
     depths::settle(&mut rows, &mut ledger, site, &texts);
     let file_names: Vec<String> = files.iter().map(|file| file.name.clone()).collect();
@@ -102,7 +135,7 @@ pub fn tidy(
     let decided = (0..site.decisions.len())
         .map(|place| {
             let by = |row: &&Row| {
-                [row.excluded_by, row.qualified_by]
+                [row.excluded_by, row.qualified_by, row.joined_by]
                     .into_iter()
                     .flatten()
                     .any(|by| usize::from(by) == place)
@@ -111,12 +144,26 @@ pub fn tidy(
         })
         .collect();
     let frame = frame(&rows)?;
-    Ok(Some(Tidy { frame, texts, ledger, files, unreadable, ignored, mapping, told, decided }))
+    let stations = companions.stations;
+    Ok(Some(Tidy {
+        frame,
+        texts,
+        ledger,
+        files,
+        unreadable,
+        ignored,
+        mapping,
+        told,
+        stations,
+        decided,
+    }))
 }
 
 /// The mapping of one file, and what is told about the file as a whole.
-fn describe(table: &Table, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>) {
+/// `joined` of its records have limits in a detection-limit table.
+fn describe(table: &Table, joined: usize, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>) {
     let header = |at: usize| table.header.get(at).unwrap_or_default().trim().to_owned();
+    let open = &table.mapping.open;
     let mut used: Vec<(usize, &str)> = table
         .mapping
         .cells
@@ -124,6 +171,7 @@ fn describe(table: &Table, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>
         .map(|(column, &at)| (at, column.key()))
         .chain(table.mapping.also.iter().flat_map(|(c, all)| all.iter().map(|&at| (at, c.key()))))
         .chain(table.mapping.unused.iter().map(|(at, _)| (*at, "")))
+        .chain((0..table.header.len()).filter_map(|at| Some((at, open.key(at)?))))
         .collect();
     used.sort_unstable();
     for (at, column) in used {
@@ -132,8 +180,20 @@ fn describe(table: &Table, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>
             header: header(at),
             column: column.to_owned(),
         });
-        if column.is_empty() {
+        if column.is_empty() && open.layout.is_none() {
             told.push(Told::ColumnNotUsed { file: table.name.clone(), column: header(at) });
+        }
+    }
+    if let Some(layout) = open.layout {
+        told.push(Told::OpenLayout {
+            file: table.name.clone(),
+            layout: layout.label(),
+            unused: table.mapping.unused.len(),
+        });
+        let own = [Column::ReportingLimit, Column::DetectionLimit];
+        let plain = own.iter().any(|column| table.mapping.cells.contains_key(column));
+        if open.limits.is_empty() && !plain && joined == 0 {
+            told.push(Told::NoLimitColumns { file: table.name.clone() });
         }
     }
     let dates = table.lines.iter().map(|line| table.cell(line, Column::Date));

@@ -89,6 +89,8 @@ pub struct Settings {
     pub duplicates: Duplicates,
     /// What non-detects contribute to a fit.
     pub non_detects: NonDetects,
+    /// Types of limits of the open standard that go before the others, the preferred first.
+    pub limit_order: Vec<String>,
     /// The statistical settings and thresholds off their default, in the order of the site
     /// file's key list.
     pub off_default: Vec<OffDefault>,

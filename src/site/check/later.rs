@@ -16,9 +16,6 @@ pub(super) fn refuse(file: &SiteFile, problems: &mut Problems<'_>) {
     }
     not_built(file.vapour.as_ref(), problems);
     not_built(file.attainment.as_ref(), problems);
-    if let Some(settings) = &file.settings {
-        not_built(settings.value.limit_order.as_ref(), problems);
-    }
     for rule in list(&file.results) {
         not_built(rule.value.layout.as_ref().filter(|at| at.value != Layout::Long), problems);
         not_built(rule.value.sheet.as_ref(), problems);

@@ -6,6 +6,9 @@ use ebbwell::site::{Site, read};
 
 mod cells;
 mod dates;
+mod layouts;
+mod names;
+mod real_open;
 
 /// A site file's text, checked.
 fn site(text: &str) -> Site {
