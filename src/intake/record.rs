@@ -208,6 +208,15 @@ impl RecordReader<'_> {
         if nothing {
             return Err(Fate::SetAside(SetAside::NoResult));
         }
+        if cell == ResultCell::Empty {
+            // Without a number no unit is missed.
+            if let Some(fate) = marks.unknown {
+                return Err(fate);
+            }
+            if marks.strictest == Some(Strictest::AboveRange) {
+                return Err(Fate::SetAside(SetAside::AboveRange));
+            }
+        }
         let typed = self.typed_limits(line, told);
         let not_detected = matches!(cell, ResultCell::Below(_) | ResultCell::NotDetected)
             || marks.strictest == Some(Strictest::NonDetect);
