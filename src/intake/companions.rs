@@ -86,6 +86,9 @@ impl Companions {
     pub fn read(found: &[Found], site: &Site) -> Self {
         let mut all = Self::default();
         for (place, file) in found.iter().enumerate() {
+            if !may_be_companion(&file.bytes) {
+                continue;
+            }
             let encoding = site.results.get(file.rule).and_then(|rule| rule.encoding);
             let Ok(decoded) = decode(&file.bytes, encoding) else { continue };
             let Some(companion) = recognised(&decoded.text, decoded.encoding) else {
@@ -113,6 +116,16 @@ impl Companions {
     pub fn at(&self, place: usize) -> Option<&CompanionFile> {
         self.files.get(&place)
     }
+}
+
+/// Whether the beginning of a file holds a word that every companion's header has, so that no
+/// other file is decoded twice. In UTF-16 each letter stands beside a NUL.
+fn may_be_companion(bytes: &[u8]) -> bool {
+    /// The longest header looked at, in bytes; those of the standard have under 2,000.
+    const HEAD: usize = 65_536;
+    let head = bytes.get(..HEAD).unwrap_or(bytes).iter().filter(|byte| **byte != 0);
+    let head: Vec<u8> = head.map(u8::to_ascii_lowercase).collect();
+    head.windows(b"identifier".len()).any(|word| word == b"identifier")
 }
 
 /// A text whose header is that of a companion.

@@ -38,10 +38,10 @@ pub fn date(text: &str, form: DateForm) -> DateText {
     if let Some(date) = serial(day, form.serials) {
         return DateText::Date(date, time.to_owned());
     }
-    if let Some(named) = named(day) {
-        return in_words(&named, form, time);
-    }
-    let Some([a, b, c]) = parts(day) else { return DateText::Unreadable };
+    let Some([a, b, c]) = parts(day) else {
+        let named = named(day);
+        return named.map_or(DateText::Unreadable, |named| in_words(&named, form, time));
+    };
     let made = |year: Option<i32>, month: &str, day: &str| {
         let date = year
             .and_then(|year| NaiveDate::from_ymd_opt(year, month.parse().ok()?, day.parse().ok()?));

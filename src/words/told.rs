@@ -153,7 +153,7 @@ pub fn detail(told: &Told) -> String {
 fn expectation(expected: Expected) -> &'static str {
     match expected {
         Expected::Result => {
-            "a result such as 0.5, <0.5, >2000, or ND with a limit in its own column"
+            "a result such as 0.5, <0.5, 0.5 U, ND (0.5), >2000, or ND with a limit in its own column"
         }
         Expected::Limit => "a positive number",
         Expected::Date => "a date such as 2024-03-05",

@@ -477,3 +477,51 @@ fn the_declared_order_of_limits_decides_which_one_counts() {
     let told = told.expect_err("no detection limit");
     assert!(told[0].to_string().contains("type of reporting or detection limit"), "{}", told[0]);
 }
+
+#[test]
+fn stations_are_kept_with_their_coordinates_where_those_can_be_true() {
+    let site = super::site(
+        "[site]\nname = \"x\"\n[[well]]\nname = \"MW-1\"\naliases = [\
+        { name = \"OY-1\", who = \"A\", when = 2026-01-01, why = \"the agency's number\" }]\n",
+    );
+    for text in [stations().to_owned(), stations().replace(',', ";"), stations().replace(',', "\t")]
+    {
+        let tidy = super::read_text(&site, &text);
+        let found: Vec<(&str, &str, Option<f64>, Option<f64>)> = tidy
+            .stations
+            .iter()
+            .map(|s| (s.well.as_str(), s.name.as_str(), s.latitude, s.longitude))
+            .collect();
+        let expected = [
+            ("MW-1", "Yard well 1", Some(43.1), Some(-89.7)),
+            ("OY-2", "Yard well 2", Some(43.2), None),
+        ];
+        assert_eq!(found, expected);
+        assert_eq!((tidy.stations[1].line, tidy.stations[1].datum.as_str()), (3, "NAD83"));
+        let rows = super::rows_of(&tidy, &site);
+        assert!(rows.iter().all(|row| row.reason == "station"), "{rows:?}");
+    }
+}
+
+#[test]
+fn limits_without_result_identifiers_join_only_where_they_speak_of_one_result() {
+    let header =
+        "MonitoringLocationIdentifier,ActivityIdentifier,ResultIdentifier,CharacteristicName";
+    let results = format!(
+        "{header},ActivityStartDate,ResultDetectionConditionText,ResultMeasureValue,\
+         ResultMeasure/MeasureUnitCode\nOY-1,S1,,Benzene,2017-03-14,Not Detected,,\n\
+         OY-1,S2,R2,Benzene,2018-03-14,Not Detected,,\n\
+         OY-1,S3,,Benzene,2019-03-14,Not Detected,,\n"
+    );
+    let limits = format!(
+        "{header},DetectionQuantitationLimitTypeName,DetectionQuantitationLimitMeasure/MeasureValue,\
+         DetectionQuantitationLimitMeasure/MeasureUnitCode\n\
+         OY-1,S1,R1,Benzene,Reporting limit,0.5,ug/l\nOY-1,S2,,Benzene,Reporting limit,0.6,ug/l\n\
+         OY-1,S3,R3,Benzene,Reporting limit,0.7,ug/l\nOY-1,S3,R4,Benzene,Reporting limit,9,ug/l\n"
+    );
+    let found = review("[site]\nname = \"x\"\n", &[("a.csv", &results), ("b.csv", &limits)]);
+    assert_eq!(count(&found, "merged", "detection-limit"), 2);
+    assert_eq!(count(&found, "set-aside", "unmatched-limit"), 2);
+    assert_eq!(count(&found, "set-aside", "no-reporting-limit"), 1);
+    assert_eq!(count(&found, "used", ""), 2);
+}
