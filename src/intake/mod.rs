@@ -2,7 +2,8 @@
 //!
 //! A file is decoded, split into records, its header matched to columns, and every record read on
 //! its own; then what needs more than one record is settled: listed names, depths, repeats of a
-//! delivery, diluted analyses. Every record leaves with a provisional fate.
+//! delivery, diluted analyses. Every record leaves with a provisional fate. Detection-limit tables and
+//! station files of the open standard are read before the results that they describe.
 
 pub mod source;
 pub mod decode;
