@@ -29,34 +29,28 @@ pub fn twins(rows: &[Row], texts: &Texts) -> Vec<Told> {
     told
 }
 
-/// A name without what near-twins differ in. A mark between two digits stays: `1-1` is not `11`.
+/// A name without what near-twins differ in. A mark between two numbers stays: `1-1` is not `11`.
 fn bare(name: &str) -> String {
-    let mut bare = String::with_capacity(name.len());
-    let mut marked = false;
-    let mut in_number = false;
-    let mut zeros = 0;
-    for c in name.chars().flat_map(char::to_lowercase) {
-        if !c.is_alphanumeric() {
-            marked = true;
-        } else if c.is_ascii_digit() {
-            if marked && in_number {
+    let lower = name.to_lowercase();
+    let mut bare = String::with_capacity(lower.len());
+    let mut after_number = false;
+    for part in lower.split(|c: char| !c.is_alphanumeric()) {
+        let mut rest = part;
+        while let Some(first) = rest.chars().next() {
+            let is_number = first.is_ascii_digit();
+            let end = rest.find(|c: char| c.is_ascii_digit() != is_number).unwrap_or(rest.len());
+            let (run, after) = rest.split_at(end);
+            if is_number && after_number {
                 bare.push('-');
             }
-            let starts = marked || !in_number;
-            if starts {
-                zeros = 0;
-            }
-            let leading = c == '0' && (starts || zeros > 0);
-            if leading {
-                zeros += 1;
-            } else {
-                zeros = 0;
-                bare.push(c);
-            }
-            (in_number, marked) = (true, false);
-        } else {
-            bare.push(c);
-            (in_number, marked, zeros) = (false, false, 0);
+            let digits = run.trim_start_matches('0');
+            bare.push_str(match (is_number, digits.is_empty()) {
+                (true, true) => "0",
+                (true, false) => digits,
+                (false, _) => run,
+            });
+            after_number = is_number;
+            rest = after;
         }
     }
     bare
@@ -77,5 +71,6 @@ mod tests {
         assert_ne!(bare("1-1"), bare("11"));
         assert_ne!(bare("MW-1-2"), bare("MW-12"));
         assert_eq!(bare("MW-10"), "mw10");
+        assert_eq!((bare("MW-00").as_str(), bare("MW").as_str()), ("mw0", "mw"));
     }
 }

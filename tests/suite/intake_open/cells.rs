@@ -1,5 +1,7 @@
 //! Result cells in every usual spelling: read as intended, or set aside with their reason.
 
+use proptest::prelude::{ProptestConfig, prop, prop_assert_eq, proptest};
+
 use super::{read_text, rows_of, site, values};
 
 const SITE: &str = "[site]\nname = \"Osier Yard\"\n";
@@ -251,4 +253,64 @@ fn a_unit_in_the_cell_stands_in_for_a_column_without_one() {
     let rows = rows_of(&read_text(&site(SITE), &both), &site(SITE));
     assert_eq!(rows[0].reason, "unknown-unit");
     assert!(rows[0].detail.contains("mg/L"), "{}", rows[0].detail);
+}
+
+/// Pieces of which cells, dates and numbers are made, some of them hostile.
+const PIECES: [&str; 34] = [
+    "0.5",
+    "<",
+    ">",
+    "U",
+    "J",
+    "ND",
+    "(",
+    ")",
+    "[",
+    "]",
+    " ",
+    "\u{a0}",
+    "ug/L",
+    "mg/L as N",
+    "e",
+    "E",
+    "-",
+    "+",
+    ".",
+    ",",
+    "*",
+    "T",
+    "12:30",
+    "Mar",
+    "M\u{e4}rz",
+    "2024",
+    "\u{2212}",
+    "\u{b5}",
+    "\u{130}",
+    "\u{202e}",
+    "79",
+    "01",
+    "6",
+    "@",
+];
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(300))]
+
+    /// Whatever stands in result, date and CAS cells, each record has one row and nothing panics.
+    #[test]
+    fn any_pieces_in_any_order_are_read_or_set_aside(
+        cells in prop::collection::vec(prop::collection::vec(0..PIECES.len(), 0..7), 3..9)
+    ) {
+        let cell = |pieces: &Vec<usize>| -> String {
+            pieces.iter().map(|&piece| PIECES[piece]).collect::<String>().replace(';', "")
+        };
+        let mut text = "well;analyte;cas;date;result;unit\nMW-1;Benzene;;2024-01-01;1;ug/L\n".to_owned();
+        for pieces in &cells {
+            let cell = cell(pieces);
+            text.push_str(&format!("MW-1;Benzene;\"{cell}\";\"{cell}\";\"{cell}\";ug/L\n"));
+        }
+        let site = site(SITE);
+        let rows = rows_of(&read_text(&site, &text), &site);
+        prop_assert_eq!(rows.len(), cells.len() + 1);
+    }
 }
