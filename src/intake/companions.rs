@@ -11,7 +11,7 @@ use super::source::Found;
 use super::split::{Line, Lines, split};
 use super::stations::Station;
 use super::texts::Texts;
-use crate::ledger::{FileFacts, MappingFacts};
+use crate::ledger::{Fate, FileFacts, MappingFacts, Merged, SetAside};
 use crate::site::Site;
 
 /// What kind of file it is.
@@ -161,8 +161,18 @@ impl CompanionFile {
         at.and_then(|&at| line.cells.get(at)).unwrap_or_default().trim()
     }
 
+    /// What becomes of its records; a limit's waits for its result.
+    #[must_use]
+    pub fn fate(&self) -> Fate {
+        match self.kind {
+            Companion::Limits => Fate::SetAside(SetAside::UnmatchedLimit),
+            Companion::Stations => Fate::Merged(Merged::Station),
+        }
+    }
+
     /// The records below the header.
-    fn records(&self) -> &[Line] {
+    #[must_use]
+    pub fn records(&self) -> &[Line] {
         self.lines.lines.get(1..).unwrap_or_default()
     }
 

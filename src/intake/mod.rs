@@ -35,6 +35,7 @@ pub mod twins;
 pub mod repeats;
 pub mod depths;
 pub mod frame;
+pub mod arrival;
 pub mod tidy;
 pub mod account;
 

@@ -2,8 +2,8 @@
 
 use polars::prelude::DataFrame;
 
+use super::arrival;
 use super::companions::{Companion, Companions};
-use super::date_order::evidence;
 use super::depths;
 use super::frame::{FrameError, frame};
 use super::names::{Names, unite_spellings};
@@ -16,9 +16,9 @@ use super::table::{Table, table};
 use super::texts::Texts;
 use super::twins::twins;
 use crate::ledger::{
-    Fate, FileFacts, Ledger, MappingFacts, Merged, SetAside, TableProblem, Told, Unreadable,
+    Fate, FileFacts, Ledger, MappingFacts, Merged, TableProblem, Told, Unreadable,
 };
-use crate::site::{Column, ResultsRule, Site};
+use crate::site::{ResultsRule, Site};
 
 /// Every record of every file in canonical columns and units, with its provisional fate.
 #[derive(Clone, Debug)]
@@ -79,16 +79,12 @@ pub fn tidy(
         let rule = site.results.get(file.rule).unwrap_or(&plain);
         let place = u32::try_from(files.len()).unwrap_or(u32::MAX);
         if let Some(companion) = companions.at(at) {
-            for row in companion.rows(place, site, &mut texts) {
-                match companion.kind {
-                    Companion::Limits => {
-                        limit_records.push(ledger.open(Fate::SetAside(SetAside::UnmatchedLimit)));
-                    }
-                    Companion::Stations => {
-                        ledger.open(Fate::Merged(Merged::Station));
-                    }
-                }
-                rows.push(row);
+            rows.extend(companion.rows(place, site, &mut texts));
+            let fate = companion.fate();
+            let records = companion.records().iter().map(|_| ledger.open(fate));
+            match companion.kind {
+                Companion::Limits => limit_records.extend(records),
+                Companion::Stations => records.for_each(drop),
             }
             mapping.extend(companion.mapping(&file.name));
             files.push(companion.facts(file));
@@ -120,7 +116,8 @@ pub fn tidy(
             blank_lines: table.blank,
             encoding: table.encoding,
         });
-        describe(&table, joined, &mut mapping, &mut told);
+        describe(&table, &mut mapping, &mut told);
+        told.extend(arrival::notes(&table, joined));
     }
     for (record, matched) in limit_records.into_iter().zip(companions.limits.matched()) {
         if *matched {
@@ -160,8 +157,7 @@ pub fn tidy(
 }
 
 /// The mapping of one file, and what is told about the file as a whole.
-/// `joined` of its records have limits in a detection-limit table.
-fn describe(table: &Table, joined: usize, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>) {
+fn describe(table: &Table, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>) {
     let header = |at: usize| table.header.get(at).unwrap_or_default().trim().to_owned();
     let open = &table.mapping.open;
     let mut used: Vec<(usize, &str)> = table
@@ -183,27 +179,6 @@ fn describe(table: &Table, joined: usize, mapping: &mut Vec<MappingFacts>, told:
         if column.is_empty() && open.layout.is_none() {
             told.push(Told::ColumnNotUsed { file: table.name.clone(), column: header(at) });
         }
-    }
-    if let Some(layout) = open.layout {
-        told.push(Told::OpenLayout {
-            file: table.name.clone(),
-            layout: layout.label(),
-            unused: table.mapping.unused.len(),
-        });
-        let own = [Column::ReportingLimit, Column::DetectionLimit];
-        let plain = own.iter().any(|column| table.mapping.cells.contains_key(column));
-        if open.limits.is_empty() && !plain && joined == 0 {
-            told.push(Told::NoLimitColumns { file: table.name.clone() });
-        }
-    }
-    let dates = table.lines.iter().map(|line| table.cell(line, Column::Date));
-    let evidence = evidence(dates);
-    if evidence.is_mixed() {
-        told.push(Told::MixedDates {
-            file: table.name.clone(),
-            day_first: evidence.day_first,
-            month_first: evidence.month_first,
-        });
     }
     if let Some(line) = table.guessed_at_line {
         told.push(Told::DecodedWindows1252 { file: table.name.clone(), line });
