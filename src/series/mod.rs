@@ -1,6 +1,6 @@
 //! Readings grouped by site, well, analyte, fraction and depth, merged to one value a date.
 //!
-//! [`points`] is the only way from a series to a fit: it applies the censoring point, the merge of
+//! [`points()`] is the only way from a series to a fit: it applies the censoring point, the merge of
 //! one date, the window and the substitution setting, and says what became of every record.
 
 pub mod key;
@@ -17,7 +17,7 @@ pub mod assemble;
 pub use grouping::group;
 pub use key::SeriesKey;
 pub use pairs::DuplicatePair;
-pub use points::{DateValue, MergeRules, Points, Window, points};
+pub use points::{DateValue, LeaveOut, MergeRules, Points, Window, points};
 pub use round::{Round, RoundRules};
 pub use well_series::{AppliedLimit, Candidate, SampleRole, WellSeries};
 pub use window::window_for;

@@ -2,6 +2,7 @@
 #![allow(clippy::print_stdout, reason = "trials print their figures and say when they skip")]
 
 mod cli;
+mod deliver;
 mod demo;
 mod intake;
 mod intake_open;
@@ -9,3 +10,4 @@ mod numerics;
 mod real;
 mod site;
 mod structure;
+mod words;

@@ -9,6 +9,7 @@ pub mod review;
 pub mod check;
 pub mod show;
 pub mod show_values;
+pub mod show_doubts;
 pub mod begun;
 pub mod explained;
 
