@@ -1,10 +1,11 @@
 //! Results files become [`Tidy`]: one frame in canonical columns, each row with its record.
 //!
-//! A file is decoded, split into records, its header matched to columns, and every record read on
-//! its own; then what needs more than one record is settled: listed names, depths, repeats of a
+//! A file's bytes become tables of records in canonical columns (`layout`), and every record is
+//! read on its own; then what needs more than one record is settled: listed names, depths, repeats of a
 //! delivery, diluted analyses. Every record leaves with a provisional fate.
 
 pub mod source;
+pub mod address;
 pub mod decode;
 pub mod split;
 pub mod header;
@@ -16,6 +17,7 @@ pub mod qualifier;
 pub mod condition;
 pub mod sample_type;
 pub mod table;
+pub mod layout;
 pub mod value;
 pub mod names;
 pub mod record;

@@ -18,6 +18,7 @@ pub mod told;
 pub mod caution;
 pub mod round;
 pub mod progress;
+pub mod workbook;
 pub mod unreadable;
 pub mod series_sentence;
 pub mod explain;

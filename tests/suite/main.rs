@@ -4,6 +4,7 @@
 mod cli;
 mod demo;
 mod intake;
+mod layouts;
 mod numerics;
 mod real;
 mod site;
