@@ -127,6 +127,11 @@ pub enum CrossTabProblem {
         /// What they say.
         titles: [String; 2],
     },
+    /// Names at the left so long that writing them into each record would take all memory.
+    LongNames {
+        /// The row at which reading stopped.
+        line: u64,
+    },
     /// One column of marks beside several results.
     SharedMark {
         /// The row whose cells head the columns.

@@ -112,6 +112,10 @@ fn cross_tab(problem: &CrossTabProblem) -> String {
             shown_short(&titles[0], CELL),
             shown_short(&titles[1], CELL),
         ),
+        CrossTabProblem::LongNames { line } => format!(
+            "up to line {line} the names at the left are many times as long as the results beside \
+             them; expected names of wells and analytes. Take long texts out of the table"
+        ),
         CrossTabProblem::SharedMark { line, header } => format!(
             "line {line}: column {:?} stands beside several results and does not say which of them \
              it marks; expected the mark in the result's cell (0.5 U). Ask for one result a line",

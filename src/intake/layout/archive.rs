@@ -33,6 +33,8 @@ const MOST_OTHER_XML: u64 = 16 << 20;
 pub(super) struct Weighed {
     /// Whether any sheet has merged cells.
     pub(super) merged: bool,
+    /// How many bytes it unpacks to.
+    pub(super) unpacked: u64,
 }
 
 /// Weighs the archive.
@@ -72,7 +74,7 @@ pub(super) fn weigh(bytes: &[u8]) -> Result<Weighed, WorkbookProblem> {
         unpacked += own;
         merged |= scan.merged;
     }
-    Ok(Weighed { merged })
+    Ok(Weighed { merged, unpacked })
 }
 
 /// The caps on what the directory of the archive says, and what kind of archive it is.

@@ -6,7 +6,8 @@ use csv::StringRecord;
 use crate::intake::split::{Filled, Line};
 use crate::ledger::WorkbookProblem;
 
-/// Fills the regions into rows that have cells of their own; `spend` is asked for every place.
+/// Fills the regions into rows that have cells of their own; `spend` is told of every place and
+/// how many bytes are filled into it.
 ///
 /// # Errors
 /// What `spend` says once a workbook has asked for too much.
@@ -34,10 +35,11 @@ pub(super) fn fill(
                 break;
             }
             for column in left..=right {
-                spend(1)?;
                 let at_origin = line.line == top && column == left;
                 let own = line.cells.get(column as usize).unwrap_or_default();
-                if !at_origin && own.is_empty() {
+                let fills_it = !at_origin && own.is_empty();
+                spend(if fills_it { text.len() as u64 } else { 0 })?;
+                if fills_it {
                     let across = column != left;
                     fills[at].push(Fill { text: text.clone(), column, across });
                 }

@@ -7,7 +7,7 @@ use std::panic::{AssertUnwindSafe, catch_unwind};
 use calamine::{Reader, SheetType, SheetVisible, Xlsx};
 use csv::StringRecord;
 
-use super::archive::weigh;
+use super::archive::{Weighed, weigh};
 use super::merged::fill;
 use super::{Grid, cell};
 use crate::intake::split::Line;
@@ -20,8 +20,11 @@ const MOST_ROWS: u64 = 1 << 20;
 const MOST_COLUMNS: u64 = 1 << 14;
 /// The most filled cells of a workbook: twice a sheet of a million rows of eight (judgement).
 const MOST_CELLS: u64 = 16 << 20;
-/// The most bytes of text in all cells of a workbook (judgement: 64 a filled cell at the most).
-const MOST_TEXT: u64 = 1 << 30;
+/// Bytes of text in all cells: any workbook may have this many and so many more for each byte it
+/// unpacks to. A text shared by many cells is stored once, so a small file could hold any number
+/// (judgement: the reference to a shared text is itself about 30 bytes).
+const FREE_TEXT: u64 = 32 << 20;
+const TEXT_A_BYTE: u64 = 4;
 /// Places, filled or not, up to the last filled cell of each row: any workbook may have this many
 /// and so many more for each filled cell. Tables fill most of their places (judgement).
 const FREE_PLACES: u64 = 2 << 20;
@@ -58,12 +61,12 @@ pub fn grids(bytes: &[u8], decimal: Decimal) -> Result<Vec<Grid>, WorkbookProble
     let weighed = weigh(bytes)?;
     // The reader is not ours: should it panic on bytes it did not expect, this file is damaged and
     // the others are read.
-    catch_unwind(AssertUnwindSafe(|| sheets(bytes, decimal, weighed.merged))).unwrap_or_else(|_| {
+    catch_unwind(AssertUnwindSafe(|| sheets(bytes, decimal, weighed))).unwrap_or_else(|_| {
         Err(WorkbookProblem::Damaged { why: "its parts contradict each other".to_owned() })
     })
 }
 
-fn sheets(bytes: &[u8], decimal: Decimal, merged: bool) -> Result<Vec<Grid>, WorkbookProblem> {
+fn sheets(bytes: &[u8], decimal: Decimal, weighed: Weighed) -> Result<Vec<Grid>, WorkbookProblem> {
     let mut book: Xlsx<_> = Xlsx::new(Cursor::new(bytes)).map_err(damaged)?;
     let listed: Vec<(String, bool)> = book
         .sheets_metadata()
@@ -71,14 +74,15 @@ fn sheets(bytes: &[u8], decimal: Decimal, merged: bool) -> Result<Vec<Grid>, Wor
         .filter(|sheet| sheet.typ == SheetType::WorkSheet)
         .map(|sheet| (sheet.name.clone(), sheet.visible != SheetVisible::Visible))
         .collect();
-    let mut budget = Budget::default();
+    let most_text = FREE_TEXT + TEXT_A_BYTE * weighed.unpacked;
+    let mut budget = Budget { cells: 0, places: 0, text: 0, most_text };
     let mut grids = Vec::new();
     for (name, hidden) in listed {
         let mut grid = sheet(&mut book, name, decimal, &mut budget)?;
         grid.hidden = hidden;
-        if merged && !grid.lines.is_empty() {
+        if weighed.merged && !grid.lines.is_empty() {
             let regions = book.merge_cells_by_sheet_name(&grid.sheet).map_err(damaged)?;
-            fill(&mut grid.lines, &regions, &mut |places| budget.places(places))?;
+            fill(&mut grid.lines, &regions, &mut |text| budget.fill(text))?;
         }
         if !grid.lines.is_empty() {
             grids.push(grid);
@@ -161,21 +165,31 @@ impl Rows {
     }
 }
 
-/// What is left to be read of a workbook.
-#[derive(Default)]
+/// What has been read of a workbook, held against the caps.
 struct Budget {
     cells: u64,
     places: u64,
     text: u64,
+    most_text: u64,
 }
 
 impl Budget {
     fn cell(&mut self, places: u64, text: u64) -> Result<(), WorkbookProblem> {
         self.cells += 1;
-        self.text += text;
         over(Cap::Cells, self.cells, MOST_CELLS)?;
-        over(Cap::TextBytes, self.text, MOST_TEXT)?;
+        self.text(text)?;
         self.places(places)
+    }
+
+    /// One place of a merged region, filled with so much text.
+    fn fill(&mut self, text: u64) -> Result<(), WorkbookProblem> {
+        self.text(text)?;
+        self.places(1)
+    }
+
+    fn text(&mut self, more: u64) -> Result<(), WorkbookProblem> {
+        self.text += more;
+        over(Cap::TextBytes, self.text, self.most_text)
     }
 
     /// A sheet that is nearly all gaps would be as large as its corners are apart.

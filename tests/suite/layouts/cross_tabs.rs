@@ -118,3 +118,25 @@ fn a_declared_cross_tab_is_read_by_the_declared_columns() {
     let long = b"well,analyte,date,result,unit\nMW-1,Benzene,2024-03-05,4,ug/L\n";
     assert_eq!(records(long, &site("layout = \"long\"")).len(), 1);
 }
+
+#[test]
+fn a_long_table_with_words_of_its_own_is_never_taken_for_a_cross_tab() {
+    for text in [
+        "Site,Parameter,SampleDate,Conc.\nMW-1,Benzene,2024-03-05,4.2\n",
+        "Parameter,SampleDate,Conc.,Method\nBenzene,2024-03-05,4.2,8260\n",
+        "Well,Parameter,Date,Analysed,Conc (ug/L)\nMW-1,Benzene,2024-03-05,2024-03-09,4.2\n",
+        "MW-1,Benzene,2024-03-05,2024-03-09,4.2,ug/L\nMW-1,Benzene,2024-06-05,2024-06-09,4,ug/L\n",
+        "2024-03-05,MW-1,Benzene,4.2,ug/L\n2024-06-05,MW-1,Benzene,4,ug/L\n",
+    ] {
+        let why = refusal(text.as_bytes(), &site(""));
+        assert!(why.contains("line 1 has no column for"), "{text}{why}");
+    }
+}
+
+#[test]
+fn a_name_at_the_left_is_not_written_into_more_records_than_memory_holds() {
+    let heads: String = (0..2_000).map(|year| format!(",{}-01-01", 1900 + year % 300)).collect();
+    let cells = ",5".repeat(2_000);
+    let text = format!("Benzene (ug/L)\nWell{heads}\n{}{cells}\n", "x".repeat(500_000));
+    assert!(refusal(text.as_bytes(), &site("")).contains("many times as long"));
+}

@@ -95,6 +95,18 @@ fn shared_texts_that_announce_more_than_they_hold() {
 }
 
 #[test]
+fn one_long_text_that_every_cell_repeats() {
+    let long = format!("<sst><si><t>{}</t></si></sst>", "x".repeat(32_000));
+    let mut data = one_row("", "").replace("</sheetData>", "");
+    for row in 3..40_000 {
+        data.push_str(&format!("<row r=\"{row}\"><c r=\"A{row}\" t=\"s\"><v>0</v></c></row>"));
+    }
+    data.push_str("</sheetData>");
+    let bomb = book_with(&data, "", &[("xl/sharedStrings.xml", long.as_bytes())]);
+    assert!(refused("repeated.xlsx", &bomb).contains("bytes of text"));
+}
+
+#[test]
 fn merged_regions_over_everything() {
     let data = one_row("<c r=\"D2\"><v>4</v></c>", &text("C2", "2024-03-05"));
     let regions = "<mergeCell ref=\"A1:XFD1048576\"/>".repeat(200_000);

@@ -115,7 +115,11 @@ impl Head {
         let Some(&first) = dates.first() else { return false };
         let label_first = self.left.get(&Column::Date).is_none_or(|at| *at < first);
         let named = [Column::Well, Column::Analyte].iter().any(|key| self.left.contains_key(key));
-        if !label_first || (dates.len() < 2 && !named) {
+        // A row whose next one has a date in the same column is a record.
+        let record = below.first().is_some_and(|line| {
+            dates.iter().any(|at| is_date(line.cells.get(*at).unwrap_or_default().trim(), context))
+        });
+        if !label_first || record || (dates.len() < 2 && !named) {
             return false;
         }
         self.across = Column::Date;
@@ -188,15 +192,21 @@ impl Head {
             Some(&at) => at,
             None => label.unwrap_or(0),
         };
-        if !dated(date) || label.is_some_and(|at| at != date) {
+        let own = is_date(&self.cells[date], context);
+        if own || !dated(date) || label.is_some_and(|at| at != date) {
             return Ok(false);
         }
         let columns: Vec<usize> = free.iter().copied().filter(|at| *at > date).collect();
         if columns.is_empty() || columns.iter().any(|at| is_date(&self.cells[*at], context)) {
             return Ok(false);
         }
-        if columns.iter().any(|at| context.known.is_analyte(&self.cells[*at])) {
+        let analytes = columns.iter().any(|at| context.known.is_analyte(&self.cells[*at]));
+        if analytes && !self.left.contains_key(&Column::Analyte) {
             return Err(self.lacks_across(Column::Analyte, Column::Well));
+        }
+        let names = columns.iter().map(|at| self.cells[*at].as_str());
+        if context.rule.layout.is_none() && !context.known.are_wells(names) {
+            return Ok(false);
         }
         self.across = Column::Well;
         self.left.remove(&Column::Well);

@@ -15,6 +15,9 @@ pub(super) struct Named {
     pub(super) unit: String,
 }
 
+/// A row of more cells than this is no row of labelled titles (judgement).
+const MOST_PAIRED: usize = 8;
+
 /// What title cells say.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub(super) struct Title {
@@ -24,9 +27,10 @@ pub(super) struct Title {
     pub(super) unit: Option<String>,
 }
 
-/// The analytes whose names are known: the site's, and the catalogue's.
+/// The names that are known: analytes of the site and the catalogue, wells of the site.
 pub(super) struct Known {
     names: HashSet<String>,
+    wells: HashSet<String>,
 }
 
 impl Known {
@@ -36,7 +40,20 @@ impl Known {
         let entries = catalogue::all().iter();
         let entries = entries.flat_map(|e| std::iter::once(&e.name).chain(&e.synonyms));
         let names = listed.map(|name| folded(name)).chain(entries.map(|name| folded(name)));
-        Self { names: names.collect() }
+        let wells = site.wells.iter().flat_map(|well| {
+            std::iter::once(&well.name).chain(well.aliases.iter().map(|alias| &alias.name))
+        });
+        Self { names: names.collect(), wells: wells.cloned().collect() }
+    }
+
+    /// Whether texts head columns of wells: two or more names, each of a listed well or with a
+    /// digit in it, as wells have and words such as `Method` have not; or one of a listed well.
+    pub(super) fn are_wells<'a>(&self, mut texts: impl ExactSizeIterator<Item = &'a str>) -> bool {
+        let several = texts.len() > 1;
+        texts.all(|text| {
+            let digit = text.bytes().any(|byte| byte.is_ascii_digit());
+            self.wells.contains(text) || (several && digit)
+        })
     }
 
     /// Whether a text names an analyte: a name that is known, or one with a unit.
@@ -60,7 +77,7 @@ impl Known {
                     _ => Title::default(),
                 }
             }
-            cells if cells.len() % 2 == 0 => {
+            cells if cells.len() <= MOST_PAIRED && cells.len() % 2 == 0 => {
                 let mut title = Title::default();
                 for two in cells.chunks(2) {
                     let column = labelled(two[0].trim_end_matches(':'))?;

@@ -29,7 +29,14 @@ pub(super) struct Unpivot {
     pub(super) described: Vec<Described>,
     /// Columns beside the keys, in the order of the made records.
     sides: Vec<Column>,
+    /// Bytes read and bytes made: what stands at the left is written into every record.
+    bytes: [usize; 2],
 }
+
+/// Any cross-tab may make this many bytes of records, and so many more for each byte read
+/// (judgement: names are a few times as long as results).
+const FREE_BYTES: usize = 32 << 20;
+const MADE_A_BYTE: usize = 32;
 
 /// The titles above a block.
 #[derive(Default)]
@@ -85,6 +92,7 @@ impl Unpivot {
             beside: Vec::new(),
             described: Vec::new(),
             sides,
+            bytes: [0, 0],
         };
         let mut titles = Titles::default();
         let mut titled = BTreeSet::new();
@@ -122,6 +130,10 @@ impl Unpivot {
                 Some(head) => {
                     titles.used = true;
                     out.row(line, head, titles.analyte()?, titles.unit.as_deref());
+                    out.bytes[0] += line.cells.as_slice().len();
+                    if out.bytes[1] > FREE_BYTES + MADE_A_BYTE * out.bytes[0] {
+                        return Err(CrossTabProblem::LongNames { line: line.line });
+                    }
                     if out.described.is_empty() {
                         out.described = head.described();
                     }
@@ -181,6 +193,7 @@ impl Unpivot {
             for side in &self.sides {
                 cells.push_field(left(*side));
             }
+            self.bytes[1] += cells.as_slice().len();
             self.lines.push(Line {
                 column: u32::try_from(at + 1).unwrap_or(u32::MAX),
                 filled: if merged { line.filled.clone() } else { from_left.clone() },
