@@ -120,12 +120,12 @@ fn a_million_empty_rows_are_blank_and_no_records() {
 #[test]
 fn a_decision_names_a_row_and_a_place_names_the_sheet() {
     let text = format!(
-        "{}\n[[decision]]\nid = \"D1\"\nkind = \"exclude\"\nfile = \"-\"\nrecords = [3]\nwho = \"analyst\"\n\
+        "{}\n[[decision]]\nid = \"D1\"\nkind = \"exclude\"\nfile = \"-\"\nrecords = [2, 3]\nwho = \"analyst\"\n\
          when = 2024-05-01\nwhy = \"pump failed\"\n",
         super::SITE
     );
     let site = ebbwell::site::read(&text, "site.toml").expect("a site");
     let tidy = super::read_bytes(&xlsx(&[("Round 1", &long())], Typed::Yes), &site);
-    assert_eq!(tidy.decided, [1]);
+    assert_eq!(tidy.decided, [2]);
     assert_eq!(tidy.place(0), "-:Round 1!2");
 }
