@@ -217,7 +217,9 @@ impl CompanionFile {
                 };
                 Row {
                     file,
+                    sheet: 0,
                     line: line.line,
+                    column: 0,
                     written,
                     site,
                     well: 0,
@@ -253,6 +255,8 @@ impl CompanionFile {
             sha256: file.sha256,
             records: self.records().len(),
             blank_lines: self.lines.blank,
+            empty_cells: 0,
+            sheets: Vec::new(),
             encoding: self.encoding,
         }
     }
@@ -267,6 +271,7 @@ impl CompanionFile {
                 let part = PARTS.iter().find(|(part, ..)| self.parts.get(part) == Some(&at));
                 MappingFacts {
                     file: file.to_owned(),
+                    sheet: String::new(),
                     header: header.trim().to_owned(),
                     column: part.map_or_else(String::new, |(_, key, _)| (*key).to_owned()),
                 }

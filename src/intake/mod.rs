@@ -1,11 +1,12 @@
 //! Results files become [`Tidy`]: one frame in canonical columns, each row with its record.
 //!
-//! A file is decoded, split into records, its header matched to columns, and every record read on
-//! its own; then what needs more than one record is settled: listed names, depths, repeats of a
-//! delivery, diluted analyses. Every record leaves with a provisional fate. Detection-limit tables and
-//! station files of the open standard are read before the results that they describe.
+//! A file's bytes become tables of records in canonical columns (`layout`), and every record is
+//! read on its own; then what needs more than one record is settled: listed names, depths, repeats of a
+//! delivery, diluted analyses. Every record leaves with a provisional fate. Detection-limit tables
+//! and station files of the open standard are read before the results that they describe.
 
 pub mod source;
+pub mod address;
 pub mod decode;
 pub mod split;
 pub mod open_names;
@@ -21,6 +22,7 @@ pub mod cell;
 pub mod basis;
 pub mod sample_type;
 pub mod table;
+pub mod layout;
 pub mod value;
 pub mod cas_dates;
 pub mod names;

@@ -48,6 +48,9 @@ impl RecordReader<'_> {
     /// Reads one line.
     pub fn read(&self, line: &Line, names: &mut Names, texts: &mut Texts) -> Read {
         let mut told = Vec::new();
+        if !line.filled.is_empty() {
+            told.push(Told::MergedFilled);
+        }
         let written = self.written(line, texts);
         let read_date = self.date(line, texts.text(written.date));
         if read_date == Err(Fate::SetAside(SetAside::AmbiguousDate)) {
@@ -60,7 +63,9 @@ impl RecordReader<'_> {
         let resolved = names.resolve(self, line, day, texts, &mut told);
         let mut row = Row {
             file: self.file,
+            sheet: texts.code(&self.table.sheet),
             line: line.line,
+            column: line.column,
             written,
             site: resolved.site,
             well: resolved.well,
@@ -87,6 +92,7 @@ impl RecordReader<'_> {
         let kind = self.kind(line, texts.text(written.result), &mut told);
         let fate = match kind {
             _ if self.table.is_ragged(line) => Fate::SetAside(SetAside::Ragged),
+            _ if self.table.holds_error(line) => Fate::SetAside(SetAside::CellError),
             _ if resolved.other_site => Fate::SetAside(SetAside::OtherSite),
             Err(fate @ (Fate::QualityControl(_) | Fate::SetAside(_))) => fate,
             _ if row.well == 0 => Fate::SetAside(SetAside::NoWell),

@@ -2,7 +2,7 @@
 //!
 //! Each case carries the figures its sentence needs; the sentence itself is in `words`.
 
-use crate::site::JoinedBy;
+use crate::site::{Column, JoinedBy};
 
 /// Something about a record that a person should know although it was dealt with.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -227,6 +227,34 @@ pub enum Told {
         /// The file.
         file: String,
     },
+    /// Lines above the header, or beside the blocks of a cross-tab, that are no records.
+    LinesBesideTable {
+        /// The file, or `file:sheet`.
+        table: String,
+        /// How many.
+        lines: usize,
+        /// What the first says.
+        first: String,
+    },
+    /// A sheet that holds no results table.
+    SheetLeftAlone {
+        /// `file:sheet`.
+        table: String,
+    },
+    /// A hidden sheet that was read.
+    SheetHidden {
+        /// `file:sheet`.
+        table: String,
+    },
+    /// A table that was read as a cross-tab.
+    ReadAsCrossTab {
+        /// The file, or `file:sheet`.
+        table: String,
+        /// What stands across.
+        across: Column,
+    },
+    /// A cell of the record was filled from a merged one.
+    MergedFilled,
     /// A file with a header and nothing below it.
     FileWithoutRecords {
         /// The file.

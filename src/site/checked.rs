@@ -11,7 +11,7 @@ use super::choices::{
     DecisionKind, Depths, Duplicates, EventKind, Meaning, NonDetects, Role, RoundLength, SameDay,
 };
 use super::delivery::{
-    Column, DateOrder, Decimal, Encoding, SampleType, SerialDates, Sigma, TwoDigitYears,
+    Column, DateOrder, Decimal, Encoding, Layout, SampleType, SerialDates, Sigma, TwoDigitYears,
 };
 use super::fraction::Fraction;
 
@@ -147,6 +147,10 @@ pub struct FlagThresholds {
 pub struct ResultsRule {
     /// The pattern, with `/` between folders, relative to the site folder.
     pub files: String,
+    /// The layout, where it is declared.
+    pub layout: Option<Layout>,
+    /// The sheet of a workbook, where it is declared.
+    pub sheet: Option<String>,
     /// The encoding, where it is declared.
     pub encoding: Option<Encoding>,
     /// The byte between cells, where it is declared.

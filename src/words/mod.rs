@@ -19,6 +19,7 @@ pub mod told;
 pub mod caution;
 pub mod round;
 pub mod progress;
+pub mod workbook;
 pub mod unreadable;
 pub mod doubt;
 pub mod series_sentence;

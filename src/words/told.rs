@@ -1,12 +1,15 @@
 //! What is told once, grouped: one sentence for the page and the notes, one detail for the ledger.
 
-use super::clean::shown;
+use super::clean::{shown, shown_short};
 use super::number::counted;
 use super::told_arrival;
 use crate::findings::Note;
 use crate::ledger::Told;
 use crate::ledger::told::Expected;
-use crate::site::JoinedBy;
+use crate::site::{Column, JoinedBy};
+
+/// A cell in a note is cut at this many characters.
+const QUOTED: usize = 40;
 
 /// One grouped line: `34 records: unit UG/L read as ug/L`.
 #[must_use]
@@ -21,6 +24,10 @@ pub fn sentence(told: &Told, records: usize) -> String {
         | Told::MixedDates { .. }
         | Told::OpenLayout { .. }
         | Told::NoLimitColumns { .. }
+        | Told::LinesBesideTable { .. }
+        | Told::SheetLeftAlone { .. }
+        | Told::SheetHidden { .. }
+        | Told::ReadAsCrossTab { .. }
         | Told::SettingOffDefault { .. } => text,
         _ if records == 0 => text,
         _ => format!("{}: {text}", counted(records, "record", "records")),
@@ -120,6 +127,28 @@ pub fn detail(told: &Told) -> String {
         Told::FileLeftAlone { file } => {
             format!("{} is no results file and was left alone", shown(file))
         }
+        Told::LinesBesideTable { table, lines, first } => format!(
+            "{}: {} above or beside the table hold no record (the first says `{}`)",
+            shown(table),
+            counted(*lines, "line", "lines"),
+            shown_short(first, QUOTED)
+        ),
+        Told::SheetLeftAlone { table } => {
+            format!("{} holds no results table and was left alone", shown(table))
+        }
+        Told::SheetHidden { table } => {
+            format!("{} is a hidden sheet; it was read like the others", shown(table))
+        }
+        Told::ReadAsCrossTab { table, across } => format!(
+            "{} was read as a cross-tab with {} across",
+            shown(table),
+            match across {
+                Column::Well => "wells",
+                Column::Analyte => "analytes",
+                _ => "dates",
+            }
+        ),
+        Told::MergedFilled => "the text of a merged cell was filled in".into(),
         Told::FileWithoutRecords { file } => {
             format!("{} has a header and no record below it", shown(file))
         }
@@ -174,6 +203,7 @@ pub fn weight(told: &Told) -> u8 {
         | Told::LimitsDiffer
         | Told::OpenLayout { .. }
         | Told::LimitJoined { .. }
+        | Told::ReadAsCrossTab { .. }
         | Told::FileLeftAlone { .. } => 0,
         Told::CasCheckDigit { .. }
         | Told::WellNotListed { .. }
@@ -184,6 +214,9 @@ pub fn weight(told: &Told) -> u8 {
         | Told::CasRestored { .. }
         | Told::BasisTaken { .. }
         | Told::NoDetectionLimit { .. }
+        | Told::LinesBesideTable { .. }
+        | Told::SheetLeftAlone { .. }
+        | Told::MergedFilled
         | Told::ColumnNotUsed { .. } => 1,
         Told::DecodedWindows1252 { .. }
         | Told::FractionUnknown { .. }
@@ -191,6 +224,7 @@ pub fn weight(told: &Told) -> u8 {
         | Told::NonDetectUnderDetect
         | Told::Recensored
         | Told::FileWithoutRecords { .. }
+        | Told::SheetHidden { .. }
         | Told::SettingOffDefault { .. }
         | Told::CasAgainstName { .. }
         | Told::WellTwins { .. }

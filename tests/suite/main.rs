@@ -6,6 +6,7 @@ mod deliver;
 mod demo;
 mod intake;
 mod intake_open;
+mod layouts;
 mod numerics;
 mod real;
 mod site;

@@ -174,7 +174,6 @@ const CELLS: &[(&str, &str)] = &[
     ("ND ()", "unreadable-number"),
     ("ND 0.5 0.6", "unreadable-number"),
     ("J 0.5", "unreadable-number"),
-    ("#VALUE!", "unreadable-number"),
     ("NA", "unreadable-number"),
     ("", "no-result"),
     // Words that say why there is no result.
