@@ -49,7 +49,9 @@ fn inputs(run: &RunFacts) -> Json {
             ("sha256", Json::text(&file.sha256)),
             ("records", Json::count(file.records)),
             ("blank_lines", Json::count(file.blank_lines)),
+            ("empty_cells", Json::count(file.empty_cells)),
             ("encoding", Json::text(file.encoding)),
+            ("sheets", Json::List(file.sheets.iter().map(|sheet| Json::text(sheet)).collect())),
         ])
     });
     Json::List(files.collect())
@@ -78,6 +80,7 @@ fn mapping(run: &RunFacts) -> Json {
     let mapping = run.mapping.iter().map(|mapped| {
         Json::Object(vec![
             ("file", Json::text(&mapped.file)),
+            ("sheet", Json::text_or_null(Some(&mapped.sheet))),
             ("header", Json::text(&mapped.header)),
             ("column", Json::text_or_null(Some(&mapped.column))),
         ])

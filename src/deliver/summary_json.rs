@@ -48,6 +48,7 @@ pub fn run(run: &RunFacts) -> Json {
             ("name", Json::text(&file.name)),
             ("records", Json::count(file.records)),
             ("blank_lines", Json::count(file.blank_lines)),
+            ("empty_cells", Json::count(file.empty_cells)),
             ("encoding", Json::text(file.encoding)),
         ])
     });

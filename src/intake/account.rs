@@ -4,6 +4,7 @@ use chrono::NaiveDate;
 use polars::prelude::{Column, DataFrame, IntoLazy, PolarsResult, UInt32Chunked, col, len};
 
 use super::Tidy;
+use super::address;
 use super::frame::FrameError;
 use super::names::{date_of, fraction_of};
 use super::texts::Code;
@@ -15,10 +16,8 @@ use crate::site::Site;
 pub struct Newest {
     /// Its date.
     pub date: NaiveDate,
-    /// Its file.
-    pub file: String,
-    /// The line it starts on.
-    pub line: u64,
+    /// Where it stands: `file:record`, `file:sheet!record`.
+    pub place: String,
 }
 
 impl Tidy {
@@ -27,14 +26,18 @@ impl Tidy {
         self.frame.column(name)?.u32()
     }
 
-    /// `file:line` of a record.
+    /// `file:record` or `file:sheet!record`.
     #[must_use]
     pub fn place(&self, record: RecordId) -> String {
         let at = record as usize;
-        let file = self.codes("file").ok().and_then(|files| files.get(at));
+        let code = |name: &str| self.codes(name).ok().and_then(|codes| codes.get(at));
         let line = self.frame.column("line").and_then(|c| c.u64()).ok().and_then(|l| l.get(at));
-        match (file.and_then(|file| self.files.get(file as usize)), line) {
-            (Some(file), Some(line)) => format!("{}:{line}", file.name),
+        let file = code("file").and_then(|file| self.files.get(file as usize));
+        match (file, code("sheet"), line, code("column")) {
+            (Some(file), Some(sheet), Some(line), Some(column)) => {
+                let record = address::record(line, column);
+                address::place(&file.name, self.texts.text(sheet), &record)
+            }
             _ => unreachable!("record numbers come from this frame"),
         }
     }
@@ -54,11 +57,8 @@ impl Tidy {
             .filter_map(|(at, _)| Some((days.get(at)?, std::cmp::Reverse(at))))
             .max();
         let Some((day, std::cmp::Reverse(at))) = newest else { return Ok(None) };
-        let file = self.codes("file")?.get(at);
-        let line = self.frame.column("line")?.u64()?.get(at);
-        Ok(date_of(day).zip(file).zip(line).and_then(|((date, file), line)| {
-            Some(Newest { date, file: self.files.get(file as usize)?.name.clone(), line })
-        }))
+        let record = RecordId::try_from(at).unwrap_or(RecordId::MAX);
+        Ok(date_of(day).map(|date| Newest { date, place: self.place(record) }))
     }
 
     /// Records by outcome and reason, in the order of the outcomes, most first.
@@ -125,6 +125,7 @@ impl Tidy {
         let days = frame.column("day")?.i32()?;
         let fractions = frame.column("fraction")?.u8()?;
         let file = self.codes("file")?;
+        let (sheet, column) = (self.codes("sheet")?, self.codes("column")?);
         let code = |name: &str| self.codes(name);
         let [site_c, well, well_w, analyte, analyte_w, date_w] = [
             code("site")?,
@@ -163,8 +164,11 @@ impl Tidy {
             let file = file.get(at).and_then(|file| self.files.get(file as usize));
             LedgerRow {
                 file: file.map_or_else(String::new, |file| file.name.clone()),
-                sheet: String::new(),
-                record: lines.get(at).map_or_else(String::new, |line| line.to_string()),
+                sheet: text(sheet, at),
+                record: lines
+                    .get(at)
+                    .zip(column.get(at))
+                    .map_or_else(String::new, |(line, column)| address::record(line, column)),
                 site: text(site_c, at),
                 well: first(well, well_w),
                 date: day.unwrap_or_else(|| text(date_w, at)),

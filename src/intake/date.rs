@@ -1,7 +1,9 @@
-//! Dates: ISO, or day and month in an order that is declared or proved; the time kept apart.
+//! Dates: ISO, the month in words, or day and month in an order that is declared or proved; the
+//! time kept apart.
 
 use chrono::{Days, NaiveDate};
 
+use super::month_names::{Named, named};
 use crate::site::{DateOrder, SerialDates, TwoDigitYears};
 
 /// How a file writes its dates.
@@ -27,7 +29,7 @@ pub enum DateText {
 }
 
 /// The years in which groundwater was sampled and this program is used.
-const YEARS: std::ops::RangeInclusive<i32> = 1900..=2200;
+pub const YEARS: std::ops::RangeInclusive<i32> = 1900..=2200;
 
 /// Reads a date cell.
 #[must_use]
@@ -36,7 +38,10 @@ pub fn date(text: &str, form: DateForm) -> DateText {
     if let Some(date) = serial(day, form.serials) {
         return DateText::Date(date, time.to_owned());
     }
-    let Some([a, b, c]) = parts(day) else { return DateText::Unreadable };
+    let Some([a, b, c]) = parts(day) else {
+        let named = named(day);
+        return named.map_or(DateText::Unreadable, |named| in_words(&named, form, time));
+    };
     let made = |year: Option<i32>, month: &str, day: &str| {
         let date = year
             .and_then(|year| NaiveDate::from_ymd_opt(year, month.parse().ok()?, day.parse().ok()?));
@@ -49,16 +54,16 @@ pub fn date(text: &str, form: DateForm) -> DateText {
         return made(a.parse().ok(), b, c);
     }
     match form.order {
-        Some(DateOrder::YearMonthDay) => made(year(a, form.two_digit_years), b, c),
-        Some(DateOrder::DayMonthYear) => made(year(c, form.two_digit_years), b, a),
-        Some(DateOrder::MonthDayYear) => made(year(c, form.two_digit_years), a, b),
+        Some(DateOrder::YearMonthDay) => made(year_of(a, form.two_digit_years), b, c),
+        Some(DateOrder::DayMonthYear) => made(year_of(c, form.two_digit_years), b, a),
+        Some(DateOrder::MonthDayYear) => made(year_of(c, form.two_digit_years), a, b),
         // Without an order: a part above 12 or equal parts leave one reading.
         None => match (a.parse::<u32>(), b.parse::<u32>()) {
             (Ok(first), Ok(second)) if first > 12 || first == second => {
-                made(year(c, form.two_digit_years), b, a)
+                made(year_of(c, form.two_digit_years), b, a)
             }
-            (Ok(_), Ok(second)) if second > 12 => made(year(c, form.two_digit_years), a, b),
-            _ if made(year(c, form.two_digit_years), a, b) == DateText::Unreadable => {
+            (Ok(_), Ok(second)) if second > 12 => made(year_of(c, form.two_digit_years), a, b),
+            _ if made(year_of(c, form.two_digit_years), a, b) == DateText::Unreadable => {
                 DateText::Unreadable
             }
             _ => DateText::Ambiguous,
@@ -66,12 +71,29 @@ pub fn date(text: &str, form: DateForm) -> DateText {
     }
 }
 
+/// A date with its month in words needs no order.
+fn in_words(named: &Named, form: DateForm, time: &str) -> DateText {
+    let (day, year) = match (form.order, named.day.len(), named.year.len()) {
+        // `24-Mar-12` where the year is declared to stand first.
+        (Some(DateOrder::YearMonthDay), 2, 2) => (&named.year, &named.day),
+        _ => (&named.day, &named.year),
+    };
+    let date = year_of(year, form.two_digit_years)
+        .and_then(|year| NaiveDate::from_ymd_opt(year, named.month, day.parse().ok()?))
+        .filter(|date| YEARS.contains(&chrono::Datelike::year(date)));
+    date.map_or(DateText::Unreadable, |date| DateText::Date(date, time.to_owned()))
+}
+
 /// `2024-03-05T10:20` and `2024-03-05 10:20 +01:00` as date and time; the local day stands.
 #[must_use]
 pub fn split_time(text: &str) -> (&str, &str) {
-    match text.find(['T', ' ']).filter(|at| *at >= 6) {
-        Some(at) if looks_like_time(&text[at + 1..]) => (&text[..at], text[at + 1..].trim()),
-        _ => (text, ""),
+    let at = text
+        .match_indices(['T', ' '])
+        .map(|(at, _)| at)
+        .find(|at| *at >= 6 && looks_like_time(&text[at + 1..]));
+    match at {
+        Some(at) => (text[..at].trim_end().trim_end_matches(','), text[at + 1..].trim()),
+        None => (text, ""),
     }
 }
 
@@ -94,7 +116,7 @@ pub fn parts(text: &str) -> Option<[&str; 3]> {
 }
 
 /// A year of four digits, or of two where the site file says what they mean.
-fn year(text: &str, two: TwoDigitYears) -> Option<i32> {
+fn year_of(text: &str, two: TwoDigitYears) -> Option<i32> {
     /// Two digits from here on are of the last century (POSIX `%y`).
     const PIVOT: i32 = 70;
     match (text.len(), two) {
@@ -141,6 +163,8 @@ mod tests {
         assert_eq!(read("2024-03-05", None), "2024-03-05 ");
         assert_eq!(read("2024-03-05T10:20:00Z", None), "2024-03-05 10:20:00Z");
         assert_eq!(read("2024/03/05 23:59", None), "2024-03-05 23:59");
+        assert_eq!(read("5 Mar 2024 10:20 PM", None), "2024-03-05 10:20 PM");
+        assert_eq!(read("2024-03-05T23:30:00-07:00", None), "2024-03-05 23:30:00-07:00");
     }
 
     #[test]

@@ -57,7 +57,9 @@ pub(crate) fn frame(rows: &[Row]) -> Result<DataFrame, PolarsError> {
     };
     let columns = vec![
         column!("file", |r| r.file),
+        column!("sheet", |r| r.sheet),
         column!("line", |r| r.line),
+        column!("column", |r| r.column),
         column!("well_written", |r| r.written.well),
         column!("analyte_written", |r| r.written.analyte),
         column!("date_written", |r| r.written.date),

@@ -3,6 +3,7 @@
 use std::collections::BTreeMap;
 use std::collections::btree_map::Entry;
 
+use super::open_names::{OpenColumns, meaning, open_columns};
 use crate::site::Column;
 use crate::terms::Unit;
 
@@ -17,6 +18,8 @@ pub struct Mapping {
     pub units: BTreeMap<Column, Unit>,
     /// Headers that were not matched, with their cells.
     pub unused: Vec<(usize, String)>,
+    /// What the open standard has beside these columns.
+    pub open: OpenColumns,
 }
 
 /// A declared header that the file does not have.
@@ -28,8 +31,8 @@ pub struct Missing {
     pub header: String,
 }
 
-/// Usual words for each column, folded (no case, blanks, underscores or punctuation). Beside the
-/// trade's words stand the column names of the open water-quality standard's result profiles.
+/// Usual words for each column, folded (no case, blanks, underscores or punctuation). The names of
+/// the open water-quality standard stand in `open_names`.
 const WORDS: [(Column, &[&str]); 22] = [
     (
         Column::Well,
@@ -41,94 +44,31 @@ const WORDS: [(Column, &[&str]); 22] = [
             "samplelocation",
             "samplepoint",
             "monitoringlocation",
-            "monitoringlocationidentifier",
-            "locationidentifier",
         ],
     ),
     (
         Column::Analyte,
-        &[
-            "analyte",
-            "parameter",
-            "chemical",
-            "compound",
-            "constituent",
-            "characteristic",
-            "resultcharacteristic",
-        ],
+        &["analyte", "parameter", "chemical", "compound", "constituent", "characteristic"],
     ),
-    (
-        Column::Date,
-        &["date", "sampledate", "sampled", "datesampled", "collectiondate", "activitystartdate"],
-    ),
-    (
-        Column::Result,
-        &["result", "value", "concentration", "resultvalue", "resultmeasurevalue", "resultmeasure"],
-    ),
-    (
-        Column::Unit,
-        &[
-            "unit",
-            "units",
-            "uom",
-            "resultunit",
-            "resultmeasuremeasureunitcode",
-            "resultmeasureunit",
-        ],
-    ),
+    (Column::Date, &["date", "sampledate", "sampled", "datesampled", "collectiondate"]),
+    (Column::Result, &["result", "value", "concentration", "resultvalue"]),
+    (Column::Unit, &["unit", "units", "uom", "resultunit"]),
     (Column::Site, &["site", "facility"]),
-    (Column::Cas, &["cas", "casrn", "resultcasnumber"]),
-    (
-        Column::Fraction,
-        &[
-            "fraction",
-            "totaldissolved",
-            "filtered",
-            "resultsamplefractiontext",
-            "resultsamplefraction",
-        ],
-    ),
-    (
-        Column::Qualifier,
-        &[
-            "qualifier",
-            "qualifiers",
-            "flag",
-            "labqualifier",
-            "qual",
-            "remark",
-            "measurequalifiercode",
-            "resultmeasurequalifiercode",
-            "resultqualifier",
-        ],
-    ),
+    (Column::Cas, &["cas", "casrn"]),
+    (Column::Fraction, &["fraction", "totaldissolved", "filtered"]),
+    (Column::Qualifier, &["qualifier", "qualifiers", "flag", "labqualifier", "qual", "remark"]),
     (Column::DetectionLimit, &["detectionlimit", "dl", "mdl", "lod", "methoddetectionlimit"]),
     (Column::ReportingLimit, &["reportinglimit", "rl", "pql", "mrl", "loq", "quantitationlimit"]),
-    (Column::SampleType, &["sampletype", "activitytypecode", "activitytype"]),
-    (
-        Column::SampleId,
-        &[
-            "sampleid",
-            "samplenumber",
-            "sampleno",
-            "activityidentifier",
-            "activityactivityidentifier",
-        ],
-    ),
+    (Column::SampleType, &["sampletype"]),
+    (Column::SampleId, &["sampleid", "samplenumber", "sampleno"]),
     (Column::Depth, &["depth", "sampledepth"]),
-    (Column::Lab, &["lab", "laboratory", "laboratoryname", "labinfoname"]),
-    (Column::Time, &["time", "sampletime", "activitystarttimetime", "activitystarttime"]),
+    (Column::Lab, &["lab", "laboratory"]),
+    (Column::Time, &["time", "sampletime"]),
     (Column::Uncertainty, &["uncertainty", "countinguncertainty"]),
-    (Column::Basis, &["basis", "methodspeciationname", "resultmethodspeciation"]),
-    (
-        Column::DetectionCondition,
-        &["detectioncondition", "resultdetectionconditiontext", "resultresultdetectioncondition"],
-    ),
-    (
-        Column::Status,
-        &["status", "resultstatus", "resultstatusidentifier", "resultmeasurestatusidentifier"],
-    ),
-    (Column::Medium, &["medium", "matrix", "activitymedianame", "activitymedia"]),
+    (Column::Basis, &["basis"]),
+    (Column::DetectionCondition, &["detectioncondition"]),
+    (Column::Status, &["status", "resultstatus"]),
+    (Column::Medium, &["medium", "matrix"]),
     (Column::Batch, &["batch", "batchid", "labbatch"]),
 ];
 
@@ -141,22 +81,26 @@ const TRAILED: [Column; 4] = [Column::Well, Column::Analyte, Column::Cas, Column
 const TRAILS: [&str; 5] = ["id", "name", "number", "code", "no"];
 
 /// A header without case, blanks, underscores and punctuation.
-fn fold(header: &str) -> String {
+#[must_use]
+pub fn fold(header: &str) -> String {
     header.chars().filter(|c| c.is_alphanumeric()).flat_map(char::to_lowercase).collect()
 }
 
 /// The usual meaning of a header, if it has one.
-fn usual(folded: &str) -> Option<Column> {
+fn usual(folded: &str, open: bool) -> Option<Column> {
     let exact = |text: &str| {
-        WORDS.iter().find(|(_, words)| words.contains(&text)).map(|(column, _)| *column)
+        let own = WORDS.iter().find(|(_, words)| words.contains(&text)).map(|(column, _)| *column);
+        own.or_else(|| meaning(text))
     };
-    exact(folded).or_else(|| {
+    let trailed = || {
         TRAILS
             .iter()
             .filter_map(|trail| folded.strip_suffix(trail))
             .filter_map(exact)
             .find(|column| TRAILED.contains(column))
-    })
+    };
+    // In a layout of the open standard `MonitoringLocationName` is a name, not the well.
+    exact(folded).or_else(|| if open { None } else { trailed() })
 }
 
 /// `Result (ug/L)` and `Result [ug/L]` as the header's name and the unit in its brackets.
@@ -203,8 +147,10 @@ pub fn mapping<'a>(
         return Err(missing);
     }
     let taken: Vec<usize> = mapping.cells.values().copied().collect();
-    let meanings: Vec<Option<Column>> =
-        headers.iter().map(|header| usual(&fold(bracketed(header).0))).collect();
+    let folded: Vec<String> = headers.iter().map(|header| fold(bracketed(header).0)).collect();
+    mapping.open = open_columns(&folded);
+    let open = mapping.open.layout.is_some();
+    let meanings: Vec<Option<Column>> = folded.iter().map(|header| usual(header, open)).collect();
     let well_elsewhere =
         declared.contains_key(&Column::Well) || meanings.contains(&Some(Column::Well));
     for (at, header) in headers.iter().enumerate() {
@@ -229,7 +175,7 @@ pub fn mapping<'a>(
                     }
                 }
             }
-            _ if header.is_empty() => {}
+            _ if header.is_empty() || mapping.open.key(at).is_some() => {}
             _ => mapping.unused.push((at, (*header).to_owned())),
         }
     }

@@ -26,12 +26,13 @@ pub(super) struct Marks {
 }
 
 impl RecordReader<'_> {
-    /// What qualifiers, detection condition and status say.
+    /// What qualifiers, codes in the result cell, detection condition and status say.
     pub(super) fn marks(
         &self,
         line: &Line,
         row: &Row,
         day: Option<NaiveDate>,
+        in_cell: &[String],
         texts: &Texts,
         told: &mut Vec<Told>,
     ) -> Result<Marks, Fate> {
@@ -50,7 +51,7 @@ impl RecordReader<'_> {
             .decided(DecisionKind::UseQualifier, row, day, texts)
             .and_then(|place| Some((place, self.site.decisions[usize::from(place)].means?)));
         let qualifier = texts.text(row.written.qualifier);
-        for code in codes(qualifier) {
+        for code in codes(qualifier).chain(in_cell.iter().map(String::as_str)) {
             let legend = self.legend(|q| q.code.as_deref() == Some(code));
             match legend.map_or_else(|| usual(code), QualifierCode::Means) {
                 QualifierCode::Means(meaning) => marks.add(meaning, code, told),

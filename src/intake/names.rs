@@ -4,11 +4,14 @@ use std::collections::HashMap;
 
 use chrono::NaiveDate;
 
+use super::cas_dates::restored;
 use super::record::RecordReader;
 use super::split::Line;
 use super::texts::{Code, Texts};
 use crate::ledger::{Fate, SetAside, Told};
-use crate::site::{CasCheck, Column, Fraction, Site, WellMatch, cas_check};
+use crate::site::{
+    CasCheck, Column, DecisionKind, Fraction, JoinedBy, Site, WellMatch, cas_check, catalogue,
+};
 use crate::terms::{folded, nearest};
 
 /// Who and what a record is about.
@@ -20,6 +23,8 @@ pub struct Resolved {
     pub other_site: bool,
     /// The well, 0 where there is none.
     pub well: Code,
+    /// The decision that joined it to another well.
+    pub joined_by: Option<u16>,
     /// The analyte as shown, 0 where there is none.
     pub analyte: Code,
     /// The CAS number.
@@ -99,9 +104,13 @@ impl Names {
         let shown_site = if site.name.is_empty() { written_site } else { site.name.as_str() };
         let other_site = !written_site.is_empty() && !site.is_named(written_site);
         let well = well_name(site, cell(Column::Well), day, told);
-        let pair = (texts.code(cell(Column::Cas)), texts.code(cell(Column::Analyte)));
-        let analyte =
-            self.analytes.entry(pair).or_insert_with(|| analyte(site, pair, texts)).clone();
+        let joined = joined(site, &well, day);
+        let well = joined.map_or(well, |(place, kept)| {
+            told.retain(|told| !matches!(told, Told::WellNotListed { .. }));
+            told.push(Told::Decision { id: site.decisions[usize::from(place)].id.clone() });
+            kept.to_owned()
+        });
+        let analyte = self.analyte(reader, line, texts);
         told.extend(analyte.told.iter().cloned());
         let medium = cell(Column::Medium);
         let wanted = analyte.listed.and_then(|at| site.analytes[at].medium.as_deref());
@@ -117,6 +126,7 @@ impl Names {
             site: texts.code(shown_site),
             other_site,
             well: texts.code(&well),
+            joined_by: joined.map(|(place, _)| place),
             analyte: analyte.shown,
             cas: analyte.cas,
             listed: analyte.listed,
@@ -124,6 +134,45 @@ impl Names {
             refused,
         }
     }
+}
+
+impl Names {
+    /// The analyte of a line: by its CAS number and name; where those are not listed or empty, by
+    /// the further names that the open standard carries.
+    fn analyte(&mut self, reader: &RecordReader<'_>, line: &Line, texts: &mut Texts) -> Analyte {
+        let (site, table) = (reader.site, reader.table);
+        let cas = texts.code(table.cell(line, Column::Cas));
+        let mut looked_up = |name: &str, texts: &mut Texts| {
+            let pair = (cas, texts.code(name));
+            self.analytes.entry(pair).or_insert_with(|| analyte(site, pair, texts)).clone()
+        };
+        let first = looked_up(table.cell(line, Column::Analyte), texts);
+        if first.refused.is_none() {
+            return first;
+        }
+        for &at in &table.mapping.open.other_names {
+            let name = line.cells.get(at).unwrap_or_default().trim();
+            if !name.is_empty() {
+                let other = looked_up(name, texts);
+                if other.refused.is_none() {
+                    return other;
+                }
+            }
+        }
+        first
+    }
+}
+
+/// The well that a decision joins this one to on a date, and the decision's place.
+fn joined<'a>(site: &'a Site, well: &str, day: Option<NaiveDate>) -> Option<(u16, &'a str)> {
+    let place = site.decisions.iter().position(|decision| {
+        decision.kind == DecisionKind::Join
+            && decision.wells.iter().skip(1).any(|name| name == well)
+            && decision.from.is_none_or(|from| day.is_some_and(|day| from <= day))
+            && decision.to.is_none_or(|to| day.is_some_and(|day| day <= to))
+    })?;
+    let kept = site.decisions[place].wells.first()?;
+    Some((u16::try_from(place).ok()?, kept))
 }
 
 /// The well's own name, by alias where the date says so.
@@ -147,10 +196,18 @@ fn well_name(site: &Site, written: &str, day: Option<NaiveDate>, told: &mut Vec<
 
 /// The analyte that a distinct pair of CAS number and name means.
 fn analyte(site: &Site, (cas, name): (Code, Code), texts: &mut Texts) -> Analyte {
-    let (cas_text, written) = (texts.text(cas).to_owned(), texts.text(name).to_owned());
+    let (mut cas_text, written) = (texts.text(cas).to_owned(), texts.text(name).to_owned());
     let mut told = Vec::new();
+    let mut cas = cas;
     if !cas_text.is_empty() && cas_check(&cas_text) != CasCheck::Holds {
-        told.push(Told::CasCheckDigit { cas: cas_text.clone() });
+        match restored(&cas_text, site) {
+            Some(number) => {
+                told.push(Told::CasRestored { written: cas_text, cas: number.clone() });
+                cas = texts.code(&number);
+                cas_text = number;
+            }
+            None => told.push(Told::CasCheckDigit { cas: cas_text.clone() }),
+        }
     }
     if written.is_empty() && cas_text.is_empty() {
         let refused = Some(Fate::SetAside(SetAside::NoAnalyte));
@@ -159,7 +216,15 @@ fn analyte(site: &Site, (cas, name): (Code, Code), texts: &mut Texts) -> Analyte
     let given = (!cas_text.is_empty()).then_some(cas_text.as_str());
     if let Some((at, by)) = site.analyte_of(given, &written) {
         let listed = &site.analytes[at];
-        if folded(&written) != folded(&listed.name) && !written.is_empty() {
+        let named = catalogue::by_name(&written);
+        let meant = catalogue::find(listed.cas.as_deref(), &listed.name);
+        if by == JoinedBy::Cas && named.is_some() && meant.is_some() && named != meant {
+            told.push(Told::CasAgainstName {
+                cas: cas_text.clone(),
+                written: written.clone(),
+                listed: listed.name.clone(),
+            });
+        } else if folded(&written) != folded(&listed.name) && !written.is_empty() {
             told.push(Told::AnalyteJoined {
                 written: written.clone(),
                 listed: listed.name.clone(),

@@ -2,7 +2,10 @@
 
 use chrono::NaiveDate;
 
+use super::basis;
+use super::cell::{ResultCell, cell};
 use super::date::{DateText, date};
+use super::limit_table::LimitTables;
 use super::names::{Names, day_number};
 use super::number::number;
 use super::qualifier::Strictest;
@@ -11,11 +14,11 @@ use super::sample_type::{non_result, sample_type};
 use super::split::Line;
 use super::table::Table;
 use super::texts::Texts;
-use super::value::{ResultCell, Said, reading, result_cell};
+use super::value::{Said, reading};
 use crate::ledger::told::Expected;
 use crate::ledger::{Fate, NonResult, QualityControl, SetAside, Told};
 use crate::site::{Column, DecisionKind, ResultsRule, SampleType, Site};
-use crate::terms::Unit;
+use crate::terms::{Unit, UnitText};
 
 /// Reads the records of one table.
 pub struct RecordReader<'a> {
@@ -27,6 +30,8 @@ pub struct RecordReader<'a> {
     pub table: &'a Table,
     /// The file's place in the run.
     pub file: u32,
+    /// The detection-limit tables beside it.
+    pub limits: &'a LimitTables,
 }
 
 /// A row, its provisional fate, and what is told about it.
@@ -43,8 +48,14 @@ impl RecordReader<'_> {
     /// Reads one line.
     pub fn read(&self, line: &Line, names: &mut Names, texts: &mut Texts) -> Read {
         let mut told = Vec::new();
+        if !line.filled.is_empty() {
+            told.push(Told::MergedFilled);
+        }
         let written = self.written(line, texts);
         let read_date = self.date(line, texts.text(written.date));
+        if read_date == Err(Fate::SetAside(SetAside::AmbiguousDate)) {
+            told.push(Told::AmbiguousDates { file: self.table.name.clone() });
+        }
         let (day, time) = match &read_date {
             Ok((day, time)) => (Some(*day), texts.code(time)),
             Err(_) => (None, 0),
@@ -52,7 +63,9 @@ impl RecordReader<'_> {
         let resolved = names.resolve(self, line, day, texts, &mut told);
         let mut row = Row {
             file: self.file,
+            sheet: texts.code(&self.table.sheet),
             line: line.line,
+            column: line.column,
             written,
             site: resolved.site,
             well: resolved.well,
@@ -73,11 +86,13 @@ impl RecordReader<'_> {
             dilution: Dilution::None,
             excluded_by: None,
             qualified_by: None,
+            joined_by: resolved.joined_by,
         };
         row.excluded_by = self.decided(DecisionKind::Exclude, &row, day, texts);
         let kind = self.kind(line, texts.text(written.result), &mut told);
         let fate = match kind {
             _ if self.table.is_ragged(line) => Fate::SetAside(SetAside::Ragged),
+            _ if self.table.holds_error(line) => Fate::SetAside(SetAside::CellError),
             _ if resolved.other_site => Fate::SetAside(SetAside::OtherSite),
             Err(fate @ (Fate::QualityControl(_) | Fate::SetAside(_))) => fate,
             _ if row.well == 0 => Fate::SetAside(SetAside::NoWell),
@@ -180,11 +195,12 @@ impl RecordReader<'_> {
         texts: &mut Texts,
         told: &mut Vec<Told>,
     ) -> Result<(), Fate> {
-        let marks = self.marks(line, row, day, texts, told)?;
+        let written = cell(texts.text(row.written.result), self.table.numbers);
+        let cell = written.result;
+        let marks = self.marks(line, row, day, &written.codes, texts, told)?;
         row.estimated = marks.estimated;
         row.dilution = marks.dilution;
         row.qualified_by = marks.decided_by;
-        let cell = result_cell(texts.text(row.written.result), self.table.numbers);
         if cell == ResultCell::Unreadable {
             let found = texts.text(row.written.result).to_owned();
             told.push(Told::Unreadable { column: "result", found, expected: Expected::Result });
@@ -198,10 +214,34 @@ impl RecordReader<'_> {
         if nothing {
             return Err(Fate::SetAside(SetAside::NoResult));
         }
-        let unit = self.unit(line, row, texts, told)?;
+        if cell == ResultCell::Empty {
+            // Without a number no unit is missed.
+            if let Some(fate) = marks.unknown {
+                return Err(fate);
+            }
+            if marks.strictest == Some(Strictest::AboveRange) {
+                return Err(Fate::SetAside(SetAside::AboveRange));
+            }
+        }
+        let typed = self.typed_limits(line, told);
+        let not_detected = matches!(cell, ResultCell::Below(_) | ResultCell::NotDetected)
+            || marks.strictest == Some(Strictest::NonDetect);
+        let own_value = matches!(cell, ResultCell::Below(_) | ResultCell::Number(_));
+        if not_detected && !own_value && row.written.reporting_limit == 0 && typed.is_empty() {
+            // Without a unit too, it is the limit that would bring one.
+            return Err(marks.unknown.unwrap_or(Fate::SetAside(SetAside::NoReportingLimit)));
+        }
+        let limit_unit = typed.unit().filter(|_| not_detected);
+        let unit = self.unit(line, row, (written.unit.as_ref(), limit_unit), texts, told)?;
         row.unit = Some(unit);
-        row.reporting_limit = self.limit(line, Column::ReportingLimit, unit, told);
-        row.detection_limit = self.limit(line, Column::DetectionLimit, unit, told);
+        self.tell_basis(row, told);
+        if row.written.reporting_limit == 0 {
+            let shown = typed.shown(texts.text(row.written.unit));
+            row.written.reporting_limit = texts.code(&shown);
+        }
+        let [reporting, detection] = typed.in_unit(unit, told);
+        row.reporting_limit = self.limit(line, Column::ReportingLimit, unit, told).or(reporting);
+        row.detection_limit = self.limit(line, Column::DetectionLimit, unit, told).or(detection);
         let uncertainty = number(self.table.cell(line, Column::Uncertainty), self.table.numbers)
             .filter(|uncertainty| *uncertainty > 0.0)
             .zip(self.rule.uncertainty);
@@ -222,25 +262,46 @@ impl RecordReader<'_> {
         read.map(|_| ())
     }
 
-    /// The result's unit; a non-detect without one takes its limit's.
+    /// The result's unit: the one in its cell, else its column's; a non-detect without one takes
+    /// its limit's.
     fn unit(
         &self,
         line: &Line,
         row: &mut Row,
+        (in_cell, of_limit): (Option<&UnitText>, Option<&str>),
         texts: &mut Texts,
         told: &mut Vec<Told>,
     ) -> Result<Unit, Fate> {
         let units = &self.table.mapping.units;
         let text = texts.text(row.written.unit).to_owned();
-        let column_basis = texts.code(self.table.cell(line, Column::Basis));
-        if text.is_empty() {
-            row.basis = column_basis;
-            let of = |column: &Column| units.get(column).copied();
-            return of(&Column::Result)
-                .or_else(|| of(&Column::ReportingLimit))
-                .or_else(|| of(&Column::DetectionLimit))
-                .ok_or(Fate::SetAside(SetAside::NoUnit));
+        let column_basis = texts.code(basis::bare(self.table.cell(line, Column::Basis)));
+        if let Some(own) = in_cell {
+            let column = if text.is_empty() {
+                units.get(&Column::Result).copied()
+            } else {
+                Unit::read(&text).map(|read| read.unit)
+            };
+            let agree = column.map_or(text.is_empty(), |column| column == own.unit);
+            if !agree {
+                told.push(Told::UnitsDiffer { cell: own.unit.label(), column: text });
+                return Err(Fate::SetAside(SetAside::UnknownUnit));
+            }
+            row.basis = own.basis.as_ref().map_or(column_basis, |basis| texts.code(basis));
+            return Ok(own.unit);
         }
+        let of = |column: &Column| units.get(column).copied();
+        let in_header = of(&Column::Result)
+            .or_else(|| of(&Column::ReportingLimit))
+            .or_else(|| of(&Column::DetectionLimit));
+        let text = match (text.is_empty(), in_header, of_limit) {
+            (false, ..) => text,
+            (true, Some(unit), _) => {
+                row.basis = column_basis;
+                return Ok(unit);
+            }
+            (true, None, Some(of_limit)) => of_limit.to_owned(),
+            (true, None, None) => return Err(Fate::SetAside(SetAside::NoUnit)),
+        };
         let in_water = match text.to_ascii_lowercase().as_str() {
             "ppb" if self.rule.ppb_in_water => Some(Unit::UG_PER_L),
             "ppm" if self.rule.ppb_in_water => Some(Unit::MG_PER_L),

@@ -2,6 +2,7 @@
 
 use std::collections::BTreeMap;
 
+use super::address;
 use super::rows::{Dilution, Kind, Row};
 use super::texts::{Code, Texts};
 use crate::ledger::{Fate, Ledger, Merged, RecordId, SetAside, Told};
@@ -95,13 +96,19 @@ fn deliveries(
                     Told::Revised {
                         was: shown(row(earlier), texts),
                         is: shown(row(record), texts),
-                        place: format!("{}:{}", files[row(record).file as usize], row(record).line),
+                        place: place_of(row(record), texts, files),
                     },
                 );
             }
         }
         standing.push(record);
     }
+}
+
+/// Where a record stands.
+fn place_of(row: &Row, texts: &Texts, files: &[String]) -> String {
+    let record = address::record(row.line, row.column);
+    address::place(&files[row.file as usize], texts.text(row.sheet), &record)
 }
 
 /// The result as written, with its qualifier and unit.

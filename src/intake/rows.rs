@@ -55,8 +55,12 @@ pub struct Written {
 pub struct Row {
     /// The file's place in the run.
     pub file: u32,
-    /// The line on which the record starts.
+    /// The sheet; empty for a text.
+    pub sheet: Code,
+    /// The line on which the record starts, the row of a sheet.
     pub line: u64,
+    /// The column of a cross-tab's cell, counted from 1; 0 where the record is a line.
+    pub column: u32,
     /// The cells as written.
     pub written: Written,
     /// The site.
@@ -97,4 +101,6 @@ pub struct Row {
     pub excluded_by: Option<u16>,
     /// The decision that says what its qualifiers mean.
     pub qualified_by: Option<u16>,
+    /// The decision that joined its well to another.
+    pub joined_by: Option<u16>,
 }

@@ -19,6 +19,7 @@ const WORDS: [(SampleType, &[&str]); 12] = [
             "field sample",
             "sample routine",
             "sample routine resample",
+            "sample - routine, regular",
             "sample other",
             "field msr/obs",
             "parent",

@@ -42,10 +42,10 @@ pub struct Collected {
     pub ignored: Vec<String>,
 }
 
-/// Endings of delimited text.
-const TEXT: [&str; 5] = ["csv", "txt", "tsv", "tab", "dat"];
-/// Endings of tables that this version does not read.
-const TABLES: [&str; 6] = ["xlsx", "xls", "xlsb", "xlsm", "ods", "parquet"];
+/// Endings of results files. Those that turn out to be of a kind that is not read are named, each
+/// with what to do; what a file is, its bytes say.
+const RESULTS: [&str; 11] =
+    ["csv", "txt", "tsv", "tab", "dat", "xlsx", "xlsm", "xls", "xlsb", "ods", "parquet"];
 
 /// Reads every file of the sources: in the order of the site's rules, then of the names.
 #[must_use]
@@ -67,12 +67,8 @@ pub fn collect(sources: &Sources, site: &Site) -> Collected {
         let ending = path.extension().and_then(|e| e.to_str()).map(str::to_ascii_lowercase);
         let in_folder = matches!(sources, Sources::Folder(_));
         match ending.as_deref() {
-            Some(ending) if TABLES.contains(&ending) => {
-                out.refused.push(SourceError::OtherKind { name });
-                continue;
-            }
             // What a person names is read whatever its ending; a folder holds other things too.
-            ending if in_folder && !ending.is_some_and(|ending| TEXT.contains(&ending)) => {
+            ending if in_folder && !ending.is_some_and(|ending| RESULTS.contains(&ending)) => {
                 out.ignored.push(name);
                 continue;
             }

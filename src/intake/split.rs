@@ -5,12 +5,33 @@ use csv::{ReaderBuilder, StringRecord};
 /// One record: the line it starts on, counted from 1, and its cells.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Line {
-    /// The line.
+    /// The line of a text, the row of a sheet.
     pub line: u64,
+    /// The column of the one cell that it is, counted from 1; 0 where it is a whole line.
+    pub column: u32,
     /// How many lines it spans.
     pub spans: u64,
     /// The cells.
     pub cells: StringRecord,
+    /// The cells that were filled from a merged one.
+    pub filled: Box<[Filled]>,
+}
+
+/// A cell that was filled from a merged one.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Filled {
+    /// Its place in the line, counted from 0.
+    pub column: u32,
+    /// Whether the merged cell's text stands in another column.
+    pub across: bool,
+}
+
+impl Line {
+    /// A whole line on one line.
+    #[must_use]
+    pub fn whole(line: u64, cells: StringRecord) -> Self {
+        Self { line, column: 0, spans: 1, cells, filled: Box::default() }
+    }
 }
 
 /// All records of a file.
@@ -45,7 +66,7 @@ pub fn split(text: &str, separator: u8) -> Lines {
         if cells.iter().all(|cell| cell.trim().is_empty()) {
             blank += 1;
         } else {
-            lines.push(Line { line, spans, cells: cells.clone() });
+            lines.push(Line { spans, ..Line::whole(line, cells.clone()) });
         }
     }
     Lines { lines, blank }

@@ -1,111 +1,77 @@
-//! One file as a table: decoded, split, its header matched, its date order settled.
+//! A table: canonical records that know where they stand, and how its dates and numbers are written.
 
 use csv::StringRecord;
 
 use super::date::DateForm;
 use super::date_order::proved;
-use super::decode::decode;
-use super::header::{Mapping, mapping};
+use super::header::Mapping;
 use super::number::NumberForm;
-use super::source::Found;
-use super::split::{Line, Lines, split};
-use crate::ledger::TableProblem;
+use super::split::Line;
+use crate::ledger::{TableProblem, Told};
 use crate::site::{Column, ResultsRule};
 
-/// A results file, ready to be read record by record.
+/// One text, or one sheet of a workbook, ready to be read record by record.
 #[derive(Clone, Debug)]
 pub struct Table {
-    /// The shown path.
+    /// The file's shown path.
     pub name: String,
+    /// The sheet; empty for a text.
+    pub sheet: String,
     /// Which cells hold which columns.
     pub mapping: Mapping,
     /// The header's cells.
     pub header: StringRecord,
-    /// The records below the header.
+    /// The records.
     pub lines: Vec<Line>,
     /// Lines whose cells are all empty.
     pub blank: usize,
-    /// How it was decoded.
-    pub encoding: &'static str,
-    /// The line from which windows-1252 was guessed.
-    pub guessed_at_line: Option<u64>,
+    /// Empty cells of a cross-tab.
+    pub empty_cells: usize,
+    /// Which header was read as which column.
+    pub described: Vec<Described>,
+    /// What is told about the table.
+    pub told: Vec<Told>,
     /// How dates are written.
     pub dates: DateForm,
     /// How numbers are written.
     pub numbers: NumberForm,
 }
 
-/// Reads a file as a table by its rule.
-///
-/// # Errors
-/// [`TableProblem`] where the bytes are no text or the first line is no header.
-pub fn table(file: &Found, rule: &ResultsRule) -> Result<Table, TableProblem> {
-    let decoded = decode(&file.bytes, rule.encoding).map_err(TableProblem::NotText)?;
-    let (mut split, mapping) = best_split(&decoded.text, rule)?;
-    let header = split.lines.remove(0).cells;
-    agreement(&split.lines, &mapping, &header)?;
-    let order = rule.date_order.or_else(|| {
-        let at = mapping.cells.get(&Column::Date).copied();
-        proved(split.lines.iter().filter_map(|line| line.cells.get(at?)))
-    });
-    Ok(Table {
-        name: file.name.clone(),
-        mapping,
-        header,
-        lines: split.lines,
-        blank: split.blank,
-        encoding: decoded.encoding,
-        guessed_at_line: decoded.guessed_at_line,
-        dates: DateForm {
-            order,
-            two_digit_years: rule.two_digit_years,
-            serials: rule.serial_dates,
-        },
-        numbers: NumberForm { decimal: rule.decimal, thousands: rule.thousands },
-    })
+/// One header and the column it was read as.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Described {
+    /// As written.
+    pub header: String,
+    /// The column's key; empty where it is not used.
+    pub column: &'static str,
 }
 
-/// Splits by the declared separator, else by the one whose first line is the best header.
-fn best_split(text: &str, rule: &ResultsRule) -> Result<(Lines, Mapping), TableProblem> {
-    const SEPARATORS: [u8; 3] = [b',', b';', b'\t'];
-    let first_line = text.trim_start().lines().next().unwrap_or_default();
-    let headers = |separator: u8| -> Vec<String> {
-        let lines = split(first_line, separator).lines;
-        lines.first().map(|l| l.cells.iter().map(str::to_owned).collect()).unwrap_or_default()
-    };
-    let matched =
-        |separator: u8| mapping(headers(separator).iter().map(String::as_str), &rule.columns);
-    let separator = rule.separator.unwrap_or_else(|| {
-        let score = |separator: u8| match matched(separator) {
-            Ok(mapping) => (usize::MAX - mapping.lacks().len(), headers(separator).len()),
-            Err(_) => (0, headers(separator).len()),
-        };
-        // The first of equals, so that a comma wins where nothing speaks for another.
-        SEPARATORS.into_iter().rev().max_by_key(|&separator| score(separator)).unwrap_or(b',')
-    });
-    let split = split(text, separator);
-    let found: Vec<String> = split
-        .lines
-        .first()
-        .map(|line| line.cells.iter().map(|cell| cell.trim().to_owned()).collect())
-        .unwrap_or_default();
-    let mapping = mapping(found.iter().map(String::as_str), &rule.columns).map_err(|missing| {
-        TableProblem::DeclaredMissing {
-            missing: missing.into_iter().map(|m| (m.column, m.header)).collect(),
-            found: found.clone(),
-        }
-    })?;
-    let lacks = mapping.lacks();
-    if lacks.is_empty() {
-        Ok((split, mapping))
-    } else {
-        Err(TableProblem::NoHeader { lacks, found })
+/// How a table's dates are written: as declared, else as the whole column proves.
+#[must_use]
+pub fn date_form<'a>(rule: &ResultsRule, column: impl Iterator<Item = &'a str>) -> DateForm {
+    DateForm {
+        order: rule.date_order.or_else(|| proved(column)),
+        two_digit_years: rule.two_digit_years,
+        serials: rule.serial_dates,
     }
+}
+
+/// How a table's numbers are written, as declared.
+#[must_use]
+pub fn number_form(rule: &ResultsRule) -> NumberForm {
+    NumberForm { decimal: rule.decimal, thousands: rule.thousands }
 }
 
 /// Two columns of one meaning may stand beside each other only where they never differ; two
 /// qualifier columns are both read.
-fn agreement(lines: &[Line], mapping: &Mapping, header: &StringRecord) -> Result<(), TableProblem> {
+///
+/// # Errors
+/// [`TableProblem::ColumnsDiffer`] at the first line where they differ.
+pub fn agreement(
+    lines: &[Line],
+    mapping: &Mapping,
+    header: &StringRecord,
+) -> Result<(), TableProblem> {
     let cell = |line: &Line, at: usize| line.cells.get(at).unwrap_or_default().trim().to_owned();
     for (&column, others) in mapping.also.iter().filter(|(c, _)| **c != Column::Qualifier) {
         let first = mapping.cells[&column];
@@ -147,6 +113,15 @@ impl Table {
         text.trim().to_owned()
     }
 
+    /// Whether a cell that the record needs holds a spreadsheet's error, such as `#N/A`.
+    #[must_use]
+    pub fn holds_error(&self, line: &Line) -> bool {
+        /// Columns that are carried along and decide nothing.
+        const CARRIED: [Column; 3] = [Column::Lab, Column::Batch, Column::Time];
+        let needed = self.mapping.cells.iter().filter(|(column, _)| !CARRIED.contains(column));
+        needed.filter_map(|(_, at)| line.cells.get(*at)).any(is_cell_error)
+    }
+
     /// Whether a line lacks a required cell, has a filled one past the header, or runs over so
     /// many lines that a quote was opened and not closed.
     #[must_use]
@@ -161,4 +136,21 @@ impl Table {
         let surplus = line.cells.iter().skip(width).any(|cell| !cell.trim().is_empty());
         short || surplus || line.spans > LOST_QUOTE
     }
+}
+
+/// Whether a text is what spreadsheets show for a formula that failed.
+fn is_cell_error(cell: &str) -> bool {
+    const ERRORS: [&str; 9] = [
+        "#N/A",
+        "#DIV/0!",
+        "#NAME?",
+        "#NULL!",
+        "#NUM!",
+        "#REF!",
+        "#VALUE!",
+        "#DATA!",
+        "#GETTING_DATA",
+    ];
+    let cell = cell.trim();
+    cell.starts_with('#') && ERRORS.contains(&cell)
 }

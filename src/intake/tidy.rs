@@ -2,16 +2,24 @@
 
 use polars::prelude::DataFrame;
 
+use super::address;
+use super::arrival;
+use super::companions::{Companion, Companions};
 use super::depths;
 use super::frame::{FrameError, frame};
+use super::layout::{self, Contents};
 use super::names::{Names, unite_spellings};
 use super::record::RecordReader;
 use super::repeats;
 use super::rows::Row;
-use super::source::{Collected, Sources, collect};
-use super::table::{Table, table};
+use super::source::{Collected, Found, Sources, collect};
+use super::stations::Station;
+use super::table::Table;
 use super::texts::Texts;
-use crate::ledger::{FileFacts, Ledger, MappingFacts, TableProblem, Told, Unreadable};
+use super::twins::twins;
+use crate::ledger::{
+    Fate, FileFacts, Ledger, MappingFacts, Merged, TableProblem, Told, Unreadable,
+};
 use crate::site::{ResultsRule, Site};
 
 /// Every record of every file in canonical columns and units, with its provisional fate.
@@ -33,6 +41,8 @@ pub struct Tidy {
     pub mapping: Vec<MappingFacts>,
     /// What is told about whole files.
     pub told: Vec<Told>,
+    /// Where wells stand, from station files.
+    pub stations: Vec<Station>,
     /// How many records each decision touched, in the order of the site file.
     pub decided: Vec<usize>,
 }
@@ -61,39 +71,62 @@ pub fn tidy(
         (Texts::default(), Ledger::default(), Names::default());
     let (mut rows, mut files, mut mapping, mut told) =
         (Vec::new(), Vec::new(), Vec::new(), Vec::new());
-    for file in found {
+    let mut companions = Companions::read(&found, site);
+    let mut limit_records = Vec::new();
+    for (at, file) in found.into_iter().enumerate() {
         if !between(&file.name) {
             return Ok(None);
         }
         let plain = ResultsRule::plain();
         let rule = site.results.get(file.rule).unwrap_or(&plain);
-        let table = match table(&file, rule) {
-            Ok(table) => table,
+        let place = u32::try_from(files.len()).unwrap_or(u32::MAX);
+        if let Some(companion) = companions.at(at) {
+            rows.extend(companion.rows(place, site, &mut texts));
+            let fate = companion.fate();
+            let records = companion.records().iter().map(|_| ledger.open(fate));
+            match companion.kind {
+                Companion::Limits => limit_records.extend(records),
+                Companion::Stations => records.for_each(drop),
+            }
+            mapping.extend(companion.mapping(&file.name));
+            files.push(companion.facts(file));
+            continue;
+        }
+        let contents = match layout::read(&file, rule, site) {
+            Ok(contents) => contents,
             Err(problem) => {
                 unreadable.push(Unreadable { name: file.name, problem });
                 continue;
             }
         };
-        let place = u32::try_from(files.len()).unwrap_or(u32::MAX);
-        let reader = RecordReader { site, rule, table: &table, file: place };
-        for line in &table.lines {
-            let read = reader.read(line, &mut names, &mut texts);
-            let record = ledger.open(read.fate);
-            for told in read.told {
-                ledger.tell(record, told);
+        for table in &contents.tables {
+            let joined = companions.limits.note(table);
+            let limits = &companions.limits;
+            let reader = RecordReader { site, rule, table, file: place, limits };
+            for line in &table.lines {
+                let read = reader.read(line, &mut names, &mut texts);
+                let record = ledger.open(read.fate);
+                for told in read.told {
+                    ledger.tell(record, told);
+                }
+                rows.push(read.row);
             }
-            rows.push(read.row);
+            describe(table, &mut mapping, &mut told);
+            told.extend(arrival::notes(table, joined));
         }
-        files.push(FileFacts {
-            name: file.name,
-            bytes: file.bytes.len() as u64,
-            sha256: file.sha256,
-            records: table.lines.len(),
-            blank_lines: table.blank,
-            encoding: table.encoding,
-        });
-        describe(&table, &mut mapping, &mut told);
+        files.push(facts(&file, &contents));
+        told.extend(contents.told);
+        for (sheet, problem) in contents.refused {
+            let problem = TableProblem::Sheet { sheet, problem: Box::new(problem) };
+            unreadable.push(Unreadable { name: file.name.clone(), problem });
+        }
     }
+    for (record, matched) in limit_records.into_iter().zip(companions.limits.matched()) {
+        if *matched {
+            ledger.amend(record, Fate::Merged(Merged::DetectionLimit));
+        }
+    }
+    told.extend(twins(&rows, &texts));
     unite_spellings(&mut rows, &texts);
     depths::settle(&mut rows, &mut ledger, site, &texts);
     let file_names: Vec<String> = files.iter().map(|file| file.name.clone()).collect();
@@ -101,7 +134,7 @@ pub fn tidy(
     let decided = (0..site.decisions.len())
         .map(|place| {
             let by = |row: &&Row| {
-                [row.excluded_by, row.qualified_by]
+                [row.excluded_by, row.qualified_by, row.joined_by]
                     .into_iter()
                     .flatten()
                     .any(|by| usize::from(by) == place)
@@ -110,32 +143,51 @@ pub fn tidy(
         })
         .collect();
     let frame = frame(&rows)?;
-    Ok(Some(Tidy { frame, texts, ledger, files, unreadable, ignored, mapping, told, decided }))
+    let stations = companions.stations;
+    Ok(Some(Tidy {
+        frame,
+        texts,
+        ledger,
+        files,
+        unreadable,
+        ignored,
+        mapping,
+        told,
+        stations,
+        decided,
+    }))
 }
 
-/// The mapping of one file, and what is told about the file as a whole.
+/// What run.json says of a file.
+fn facts(file: &Found, contents: &Contents) -> FileFacts {
+    let tables = || contents.tables.iter();
+    let sheets = tables().map(|table| table.sheet.clone()).filter(|sheet| !sheet.is_empty());
+    FileFacts {
+        name: file.name.clone(),
+        bytes: file.bytes.len() as u64,
+        sha256: file.sha256.clone(),
+        records: tables().map(|table| table.lines.len()).sum(),
+        blank_lines: tables().map(|table| table.blank).sum(),
+        empty_cells: tables().map(|table| table.empty_cells).sum(),
+        sheets: sheets.collect(),
+        encoding: contents.encoding,
+    }
+}
+
+/// The mapping of one table, and what is told about the table as a whole.
 fn describe(table: &Table, mapping: &mut Vec<MappingFacts>, told: &mut Vec<Told>) {
-    let header = |at: usize| table.header.get(at).unwrap_or_default().trim().to_owned();
-    let mut used: Vec<(usize, &str)> = table
-        .mapping
-        .cells
-        .iter()
-        .map(|(column, &at)| (at, column.key()))
-        .chain(table.mapping.also.iter().flat_map(|(c, all)| all.iter().map(|&at| (at, c.key()))))
-        .chain(table.mapping.unused.iter().map(|(at, _)| (*at, "")))
-        .collect();
-    used.sort_unstable();
-    for (at, column) in used {
+    let name = address::table(&table.name, &table.sheet);
+    for described in &table.described {
         mapping.push(MappingFacts {
             file: table.name.clone(),
-            header: header(at),
-            column: column.to_owned(),
+            sheet: table.sheet.clone(),
+            header: described.header.clone(),
+            column: described.column.to_owned(),
         });
-        if column.is_empty() {
-            told.push(Told::ColumnNotUsed { file: table.name.clone(), column: header(at) });
+        if described.column.is_empty() && table.mapping.open.layout.is_none() {
+            let column = described.header.clone();
+            told.push(Told::ColumnNotUsed { file: name.clone(), column });
         }
     }
-    if let Some(line) = table.guessed_at_line {
-        told.push(Told::DecodedWindows1252 { file: table.name.clone(), line });
-    }
+    told.extend(table.told.iter().cloned());
 }

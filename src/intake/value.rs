@@ -1,44 +1,10 @@
 //! The result cell, the qualifiers, the limits: what one record says.
 
-use super::number::{NumberForm, number};
+use super::cell::ResultCell;
 use super::qualifier::Strictest;
 use crate::ledger::{Fate, SetAside, Told};
 use crate::site::Sigma;
 use crate::terms::{Dimension, Reading, Unit};
-
-/// A result cell as written.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum ResultCell {
-    /// Nothing.
-    Empty,
-    /// A number.
-    Number(f64),
-    /// `<v`.
-    Below(f64),
-    /// `>v`.
-    Above(f64),
-    /// `ND` without a number.
-    NotDetected,
-    /// Anything else.
-    Unreadable,
-}
-
-/// Reads a result cell.
-#[must_use]
-pub fn result_cell(text: &str, form: NumberForm) -> ResultCell {
-    let marked = |rest: &str, made: fn(f64) -> ResultCell| {
-        number(rest, form).map_or(ResultCell::Unreadable, made)
-    };
-    match text.trim() {
-        "" => ResultCell::Empty,
-        text if text.eq_ignore_ascii_case("nd") => ResultCell::NotDetected,
-        text => match (text.strip_prefix('<'), text.strip_prefix('>')) {
-            (Some(rest), _) => marked(rest, ResultCell::Below),
-            (_, Some(rest)) => marked(rest, ResultCell::Above),
-            _ => marked(text, ResultCell::Number),
-        },
-    }
-}
 
 /// Everything a record says about its value; limits already in the result's unit.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -136,9 +102,9 @@ fn detectable_level(said: &Said) -> Option<f64> {
 
 #[cfg(test)]
 mod tests {
-    use super::{
-        NumberForm, Reading, ResultCell, Said, Strictest, Told, Unit, reading, result_cell,
-    };
+    use super::super::cell::cell;
+    use super::super::number::NumberForm;
+    use super::{Reading, ResultCell, Said, Strictest, Told, Unit, reading};
     use crate::ledger::{Fate, SetAside};
     use crate::site::{Decimal, Sigma};
 
@@ -146,26 +112,12 @@ mod tests {
 
     fn said(text: &str) -> Said {
         Said {
-            cell: result_cell(text, FORM),
+            cell: cell(text, FORM).result,
             unit: Unit::UG_PER_L,
             strictest: None,
             reporting_limit: None,
             detection_limit: None,
             uncertainty: None,
-        }
-    }
-
-    #[test]
-    fn cells_read_as_intended_or_not_at_all() {
-        for (text, cell) in [
-            ("< 0.5", ResultCell::Below(0.5)),
-            ("<.5", ResultCell::Below(0.5)),
-            (">2000", ResultCell::Above(2000.0)),
-            ("nd", ResultCell::NotDetected),
-            ("<O.5", ResultCell::Unreadable),
-            ("", ResultCell::Empty),
-        ] {
-            assert_eq!(result_cell(text, FORM), cell, "{text}");
         }
     }
 

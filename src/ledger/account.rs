@@ -15,7 +15,11 @@ pub struct FileFacts {
     pub records: usize,
     /// Lines whose cells are all empty.
     pub blank_lines: usize,
-    /// How it was decoded: `utf-8`, `utf-16le`, `utf-16be`, `windows-1252`.
+    /// Empty cells of a cross-tab.
+    pub empty_cells: usize,
+    /// The sheets of a workbook that were read.
+    pub sheets: Vec<String>,
+    /// How it was decoded: `utf-8`, `utf-16le`, `utf-16be`, `windows-1252`; `xlsx` for a workbook.
     pub encoding: &'static str,
 }
 
@@ -35,6 +39,8 @@ pub struct OutcomeCount {
 pub struct MappingFacts {
     /// The file.
     pub file: String,
+    /// The sheet of a workbook.
+    pub sheet: String,
     /// The header as written.
     pub header: String,
     /// The column it was read as; empty where it is not used.

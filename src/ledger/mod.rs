@@ -12,7 +12,9 @@ pub mod unreadable;
 pub use account::{FileFacts, LedgerRow, MappingFacts, OutcomeCount};
 pub use fate::{Fate, Merged, NonResult, Outcome, QualityControl, SetAside, UsedAs};
 pub use told::Told;
-pub use unreadable::{NotText, SourceError, TableProblem, Unreadable};
+pub use unreadable::{
+    Cap, CrossTabProblem, NotText, SourceError, TableProblem, Unreadable, WorkbookProblem,
+};
 
 /// One record's number in the run: files in delivery order, records in file order, from 0.
 pub type RecordId = u32;

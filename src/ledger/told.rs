@@ -2,7 +2,7 @@
 //!
 //! Each case carries the figures its sentence needs; the sentence itself is in `words`.
 
-use crate::site::JoinedBy;
+use crate::site::{Column, JoinedBy};
 
 /// Something about a record that a person should know although it was dealt with.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
@@ -92,6 +92,84 @@ pub enum Told {
         /// As written.
         written: String,
     },
+    /// The unit in the result cell and the unit beside it differ.
+    UnitsDiffer {
+        /// In the cell.
+        cell: &'static str,
+        /// In its column or header.
+        column: String,
+    },
+    /// A result without a basis where the listed analyte has one.
+    BasisTaken {
+        /// The analyte.
+        analyte: String,
+        /// The listed basis.
+        basis: String,
+    },
+    /// A CAS number that a spreadsheet had turned into a date.
+    CasRestored {
+        /// As written.
+        written: String,
+        /// As restored.
+        cas: String,
+    },
+    /// A CAS number of one substance beside the name of another; the number counts.
+    CasAgainstName {
+        /// The number.
+        cas: String,
+        /// The name beside it.
+        written: String,
+        /// The name of the substance with the number.
+        listed: String,
+    },
+    /// Well names that differ in hyphens, blanks, leading zeros or case alone.
+    WellTwins {
+        /// The names.
+        wells: Vec<String>,
+    },
+    /// A file whose dates stand in both orders of day and month.
+    MixedDates {
+        /// The file.
+        file: String,
+        /// Dates that only day first can be.
+        day_first: usize,
+        /// Dates that only month first can be.
+        month_first: usize,
+    },
+    /// A file in a layout of the open water-quality standard.
+    OpenLayout {
+        /// The file.
+        file: String,
+        /// The layout.
+        layout: &'static str,
+        /// How many of its columns are not used.
+        unused: usize,
+    },
+    /// A file of the open standard that has no columns for limits.
+    NoLimitColumns {
+        /// The file.
+        file: String,
+    },
+    /// A type of limit that is no detection limit; ignored.
+    NoDetectionLimit {
+        /// The type.
+        kind: String,
+    },
+    /// A type of limit that has no rank; ignored.
+    LimitTypeUnknown {
+        /// The type.
+        kind: String,
+    },
+    /// A limit whose unit is not known or of another dimension; ignored.
+    LimitUnit {
+        /// The unit.
+        unit: String,
+    },
+    /// A limit that came from a detection-limit table.
+    LimitJoined {
+        /// The table's file.
+        file: String,
+    },
     /// The order of day and month is neither declared nor proved.
     AmbiguousDates {
         /// The file.
@@ -149,6 +227,34 @@ pub enum Told {
         /// The file.
         file: String,
     },
+    /// Lines above the header, or beside the blocks of a cross-tab, that are no records.
+    LinesBesideTable {
+        /// The file, or `file:sheet`.
+        table: String,
+        /// How many.
+        lines: usize,
+        /// What the first says.
+        first: String,
+    },
+    /// A sheet that holds no results table.
+    SheetLeftAlone {
+        /// `file:sheet`.
+        table: String,
+    },
+    /// A hidden sheet that was read.
+    SheetHidden {
+        /// `file:sheet`.
+        table: String,
+    },
+    /// A table that was read as a cross-tab.
+    ReadAsCrossTab {
+        /// The file, or `file:sheet`.
+        table: String,
+        /// What stands across.
+        across: Column,
+    },
+    /// A cell of the record was filled from a merged one.
+    MergedFilled,
     /// A file with a header and nothing below it.
     FileWithoutRecords {
         /// The file.

@@ -22,9 +22,9 @@ pub enum Error {
     },
     /// The newest date lies ahead of today and no as-of date was given.
     #[error(
-        "{file}:{line}: the newest sample date {date} lies after today, {today}; expected no date \
+        "{place}: the newest sample date {date} lies after today, {today}; expected no date \
          to come. Correct the date, or name the date of the review with --as-of",
-        file = newest.file, line = newest.line, date = newest.date
+        place = newest.place, date = newest.date
     )]
     NewestAhead {
         /// The record.

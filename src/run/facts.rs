@@ -72,7 +72,7 @@ fn settings_in_force(site: &Site) -> Vec<(String, String)> {
     let number = words::number::table;
     let rate = settings.rate_needs;
     let date = settings.date_needs;
-    let pairs: [(&str, String); 18] = [
+    let pairs: [(&str, String); 19] = [
         ("confidence", number(settings.confidence)),
         ("goal-date", settings.goal_date.map_or_else(String::new, |date| date.to_string())),
         ("horizon-years", number(settings.horizon_years)),
@@ -88,6 +88,7 @@ fn settings_in_force(site: &Site) -> Vec<(String, String)> {
         ("same-day", settings.same_day.code().to_owned()),
         ("duplicates", settings.duplicates.code().to_owned()),
         ("non-detects", settings.non_detects.code().to_owned()),
+        ("limit-order", settings.limit_order.join("; ")),
         ("flags.short-record-years", number(flags.short_record_years)),
         ("flags.mostly-non-detects", number(flags.mostly_non_detects)),
         ("flags.duplicates-rpd", number(flags.duplicates_rpd)),

@@ -11,7 +11,7 @@ use super::choices::{
     DecisionKind, Depths, Duplicates, EventKind, Meaning, NonDetects, Role, RoundLength, SameDay,
 };
 use super::delivery::{
-    Column, DateOrder, Decimal, Encoding, SampleType, SerialDates, Sigma, TwoDigitYears,
+    Column, DateOrder, Decimal, Encoding, Layout, SampleType, SerialDates, Sigma, TwoDigitYears,
 };
 use super::fraction::Fraction;
 
@@ -89,6 +89,8 @@ pub struct Settings {
     pub duplicates: Duplicates,
     /// What non-detects contribute to a fit.
     pub non_detects: NonDetects,
+    /// Types of limits of the open standard that go before the others, the preferred first.
+    pub limit_order: Vec<String>,
     /// The statistical settings and thresholds off their default, in the order of the site
     /// file's key list.
     pub off_default: Vec<OffDefault>,
@@ -145,6 +147,10 @@ pub struct FlagThresholds {
 pub struct ResultsRule {
     /// The pattern, with `/` between folders, relative to the site folder.
     pub files: String,
+    /// The layout, where it is declared.
+    pub layout: Option<Layout>,
+    /// The sheet of a workbook, where it is declared.
+    pub sheet: Option<String>,
     /// The encoding, where it is declared.
     pub encoding: Option<Encoding>,
     /// The byte between cells, where it is declared.

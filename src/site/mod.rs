@@ -9,6 +9,7 @@ pub mod written;
 pub mod choices;
 pub mod delivery;
 pub mod fraction;
+pub mod limit_type;
 pub mod cas;
 pub mod catalogue;
 pub mod checked;
@@ -34,6 +35,7 @@ pub use delivery::{
 };
 pub use file::SiteFile;
 pub use fraction::Fraction;
+pub use limit_type::{LimitType, limit_type};
 pub use lookup::{JoinedBy, WellMatch};
 pub use problem::{Problem, ProblemKind};
 pub use reader::read;

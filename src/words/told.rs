@@ -1,11 +1,15 @@
 //! What is told once, grouped: one sentence for the page and the notes, one detail for the ledger.
 
-use super::clean::shown;
+use super::clean::{shown, shown_short};
 use super::number::counted;
+use super::told_arrival;
 use crate::findings::Note;
 use crate::ledger::Told;
 use crate::ledger::told::Expected;
-use crate::site::JoinedBy;
+use crate::site::{Column, JoinedBy};
+
+/// A cell in a note is cut at this many characters.
+const QUOTED: usize = 40;
 
 /// One grouped line: `34 records: unit UG/L read as ug/L`.
 #[must_use]
@@ -16,6 +20,14 @@ pub fn sentence(told: &Told, records: usize) -> String {
         | Told::ColumnNotUsed { .. }
         | Told::FileLeftAlone { .. }
         | Told::FileWithoutRecords { .. }
+        | Told::WellTwins { .. }
+        | Told::MixedDates { .. }
+        | Told::OpenLayout { .. }
+        | Told::NoLimitColumns { .. }
+        | Told::LinesBesideTable { .. }
+        | Told::SheetLeftAlone { .. }
+        | Told::SheetHidden { .. }
+        | Told::ReadAsCrossTab { .. }
         | Told::SettingOffDefault { .. } => text,
         _ if records == 0 => text,
         _ => format!("{}: {text}", counted(records, "record", "records")),
@@ -85,6 +97,18 @@ pub fn detail(told: &Told) -> String {
             format!("sample type `{}` is neither known nor mapped", shown(written))
         }
         Told::UnknownUnit { written } => format!("unit `{}` is not known", shown(written)),
+        Told::UnitsDiffer { .. }
+        | Told::BasisTaken { .. }
+        | Told::CasRestored { .. }
+        | Told::CasAgainstName { .. }
+        | Told::WellTwins { .. }
+        | Told::MixedDates { .. }
+        | Told::OpenLayout { .. }
+        | Told::NoLimitColumns { .. }
+        | Told::NoDetectionLimit { .. }
+        | Told::LimitTypeUnknown { .. }
+        | Told::LimitUnit { .. }
+        | Told::LimitJoined { .. } => told_arrival::detail(told),
         Told::AmbiguousDates { file } => format!(
             "{}: day and month could be either way round; `date-order` under [[results]] settles it",
             shown(file)
@@ -103,6 +127,28 @@ pub fn detail(told: &Told) -> String {
         Told::FileLeftAlone { file } => {
             format!("{} is no results file and was left alone", shown(file))
         }
+        Told::LinesBesideTable { table, lines, first } => format!(
+            "{}: {} above or beside the table hold no record (the first says `{}`)",
+            shown(table),
+            counted(*lines, "line", "lines"),
+            shown_short(first, QUOTED)
+        ),
+        Told::SheetLeftAlone { table } => {
+            format!("{} holds no results table and was left alone", shown(table))
+        }
+        Told::SheetHidden { table } => {
+            format!("{} is a hidden sheet; it was read like the others", shown(table))
+        }
+        Told::ReadAsCrossTab { table, across } => format!(
+            "{} was read as a cross-tab with {} across",
+            shown(table),
+            match across {
+                Column::Well => "wells",
+                Column::Analyte => "analytes",
+                _ => "dates",
+            }
+        ),
+        Told::MergedFilled => "the text of a merged cell was filled in".into(),
         Told::FileWithoutRecords { file } => {
             format!("{} has a header and no record below it", shown(file))
         }
@@ -136,7 +182,7 @@ pub fn detail(told: &Told) -> String {
 fn expectation(expected: Expected) -> &'static str {
     match expected {
         Expected::Result => {
-            "a result such as 0.5, <0.5, >2000, or ND with a limit in its own column"
+            "a result such as 0.5, <0.5, 0.5 U, ND (0.5), >2000, or ND with a limit in its own column"
         }
         Expected::Limit => "a positive number",
         Expected::Date => "a date such as 2024-03-05",
@@ -155,6 +201,9 @@ pub fn weight(told: &Told) -> u8 {
         | Told::AnalyteJoined { .. }
         | Told::WellAlias { .. }
         | Told::LimitsDiffer
+        | Told::OpenLayout { .. }
+        | Told::LimitJoined { .. }
+        | Told::ReadAsCrossTab { .. }
         | Told::FileLeftAlone { .. } => 0,
         Told::CasCheckDigit { .. }
         | Told::WellNotListed { .. }
@@ -162,6 +211,12 @@ pub fn weight(told: &Told) -> u8 {
         | Told::HoldingTime
         | Told::UnderDetectableActivity
         | Told::DetectionLimitTaken
+        | Told::CasRestored { .. }
+        | Told::BasisTaken { .. }
+        | Told::NoDetectionLimit { .. }
+        | Told::LinesBesideTable { .. }
+        | Told::SheetLeftAlone { .. }
+        | Told::MergedFilled
         | Told::ColumnNotUsed { .. } => 1,
         Told::DecodedWindows1252 { .. }
         | Told::FractionUnknown { .. }
@@ -169,13 +224,21 @@ pub fn weight(told: &Told) -> u8 {
         | Told::NonDetectUnderDetect
         | Told::Recensored
         | Told::FileWithoutRecords { .. }
+        | Told::SheetHidden { .. }
         | Told::SettingOffDefault { .. }
+        | Told::CasAgainstName { .. }
+        | Told::WellTwins { .. }
+        | Told::MixedDates { .. }
+        | Told::NoLimitColumns { .. }
+        | Told::LimitTypeUnknown { .. }
+        | Told::LimitUnit { .. }
         | Told::Revised { .. } => 2,
         Told::AnalyteNotListed { .. }
         | Told::UnknownQualifier { .. }
         | Told::UnknownCondition { .. }
         | Told::UnknownSampleType { .. }
         | Told::UnknownUnit { .. }
+        | Told::UnitsDiffer { .. }
         | Told::AmbiguousDates { .. }
         | Told::Unreadable { .. } => 3,
     }

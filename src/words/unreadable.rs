@@ -1,7 +1,8 @@
 //! Why a file gave no records, and what to do about it.
 
 use super::clean::{shown, shown_short};
-use crate::ledger::{NotText, SourceError, TableProblem};
+use super::workbook;
+use crate::ledger::{CrossTabProblem, NotText, SourceError, TableProblem};
 use crate::site::Column;
 
 /// A cell in a message is cut at this many characters.
@@ -20,11 +21,6 @@ pub fn why(problem: &TableProblem) -> String {
             "its bytes are those of {}; one of the two was read, take the other away",
             shown(same_as)
         ),
-        TableProblem::Source(SourceError::OtherKind { .. }) => {
-            "a workbook or another binary table, which this version does not read; save each \
-             sheet as CSV (UTF-8) and put that in its place"
-                .to_owned()
-        }
         TableProblem::NotText(NotText::Empty) => {
             "the file is empty; expected a header and results below it; ask for it again".to_owned()
         }
@@ -36,21 +32,32 @@ pub fn why(problem: &TableProblem) -> String {
             "its bytes are not {declared}, which [[results]] declares; correct encoding or take \
              the key away"
         ),
-        TableProblem::NoHeader { lacks, found } => format!(
-            "line 1 has no column for {}; found {}; expected headers such as Well, Analyte, Date, \
+        TableProblem::NoHeader { line, lacks, found } => format!(
+            "line {line} has no column for {}; found {}; expected headers such as Well, Analyte, Date, \
              Result, Unit. Name them in [[results]] columns = {{ {} = \"their header\" }}",
             listed(lacks.iter().map(|column| column.key())),
             headers(found),
             lacks.first().map_or("well", |column| column.key()),
         ),
-        TableProblem::DeclaredMissing { missing, found } => format!(
-            "line 1 lacks {}, which [[results]] columns declares; found {}; correct the \
+        TableProblem::DeclaredMissing { line, missing, found } => format!(
+            "line {line} lacks {}, which [[results]] columns declares; found {}; correct the \
              declaration or limit it to the files that have the header",
             listed(missing.iter().map(|(column, header)| {
                 format!("{:?} (as {})", shown_short(header, CELL), column.key())
             })),
             headers(found),
         ),
+        TableProblem::CrossTab(problem) => cross_tab(problem),
+        TableProblem::Workbook(problem) => workbook::why(problem),
+        TableProblem::NoSuchSheet { declared, found } => format!(
+            "it has no sheet {:?} with cells, which [[results]] sheet declares; found {}; correct \
+             the name or take the key away",
+            shown_short(declared, CELL),
+            headers(found),
+        ),
+        TableProblem::Sheet { sheet, problem } => {
+            format!("sheet {:?}: {}", shown_short(sheet, CELL), why(problem))
+        }
         TableProblem::ColumnsDiffer { column, headers, line, cells } => format!(
             "columns {:?} and {:?} both mean {} and differ on line {line} ({:?} and {:?}); say \
              which one counts: [[results]] columns = {{ {} = {:?} }}",
@@ -61,6 +68,58 @@ pub fn why(problem: &TableProblem) -> String {
             shown_short(&cells[1], CELL),
             column.key(),
             shown_short(&headers[0], CELL),
+        ),
+    }
+}
+
+/// Why a cross-tab cannot be read, and the key that settles it.
+fn cross_tab(problem: &CrossTabProblem) -> String {
+    match problem {
+        CrossTabProblem::NoHead => "[[results]] declares a cross-tab, and no row near the top \
+             heads columns of dates, wells or analytes; expected a row such as Well, 2024-03-05, \
+             2024-06-05. Correct layout, or name the columns at the left in [[results]] columns"
+            .to_owned(),
+        CrossTabProblem::Lacks { line, across, lacks, found } => {
+            let step = match lacks {
+                Column::Analyte => "Write the analyte with its unit, such as Benzene (ug/L), in a \
+                     row above, or name the column that holds analytes: [[results]] layout = \
+                     \"cross-tab\", columns = { analyte = \"its header\" }"
+                    .to_owned(),
+                lacks => format!(
+                    "Name its column: [[results]] layout = \"cross-tab\", columns = {{ {} = \
+                     \"its header\" }}",
+                    lacks.key()
+                ),
+            };
+            format!(
+                "line {line} heads a cross-tab with {} across, and nothing says where the {} is; \
+                 found {}. {step}",
+                match across {
+                    Column::Well => "wells",
+                    Column::Analyte => "analytes",
+                    _ => "dates",
+                },
+                column_word(*lacks),
+                headers(found),
+            )
+        }
+        CrossTabProblem::TwoTitles { lines, titles } => format!(
+            "lines {} and {} above one block name two analytes, {:?} and {:?}; expected one. Take \
+             one away, or name the column that holds analytes: [[results]] columns = {{ analyte = \
+             \"its header\" }}",
+            lines[0],
+            lines[1],
+            shown_short(&titles[0], CELL),
+            shown_short(&titles[1], CELL),
+        ),
+        CrossTabProblem::LongNames { line } => format!(
+            "up to line {line} the names at the left are many times as long as the results beside \
+             them; expected names of wells and analytes. Take long texts out of the table"
+        ),
+        CrossTabProblem::SharedMark { line, header } => format!(
+            "line {line}: column {:?} stands beside several results and does not say which of them \
+             it marks; expected the mark in the result's cell (0.5 U). Ask for one result a line",
+            shown_short(header, CELL),
         ),
     }
 }

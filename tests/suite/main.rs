@@ -7,6 +7,8 @@ mod cli;
 mod deliver;
 mod demo;
 mod intake;
+mod intake_open;
+mod layouts;
 mod numerics;
 mod real;
 mod site;

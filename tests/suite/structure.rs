@@ -29,7 +29,8 @@ const BINARY: [&str; 2] = ["cli", "main"];
 
 /// Where each outside crate may be named: parts of the library, or single files of theirs. A crate
 /// without a line here has no place yet, which is an offence too.
-const PLACES: [(&str, &[&str]); 22] = [
+const PLACES: [(&str, &[&str]); 24] = [
+    ("calamine", &["intake/layout"]),
     (
         "chrono",
         &[
@@ -58,6 +59,7 @@ const PLACES: [(&str, &[&str]); 22] = [
     ("terminal_size", &["cli"]),
     ("thiserror", &[""]),
     ("toml", &["site"]),
+    ("zip", &["intake/layout"]),
 ];
 
 /// One source file: its path below `src` and its text.

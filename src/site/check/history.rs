@@ -122,7 +122,7 @@ fn suits_kind(table: &DecisionTable, kind: &At<DecisionKind>, problems: &mut Pro
         DecisionKind::UseQualifier if table.means.is_none() => {
             problems.tell(kind, ProblemKind::Needs { other: "means" });
         }
-        DecisionKind::Join => problems.tell(kind, ProblemKind::NotBuilt),
+        DecisionKind::Join => suits_join(table, kind, problems),
         DecisionKind::Window => {
             let other = "kind = \"window\", which goes by wells, analytes and dates";
             if table.from.is_none() && table.to.is_none() {
@@ -145,6 +145,28 @@ fn suits_kind(table: &DecisionTable, kind: &At<DecisionKind>, problems: &mut Pro
     {
         let other = "a kind other than \"use-qualifier\"";
         problems.tell(means, ProblemKind::Pointless { other });
+    }
+}
+
+/// A join names the kept well first and then those that join it; it goes by wells and dates alone.
+fn suits_join(table: &DecisionTable, kind: &At<DecisionKind>, problems: &mut Problems<'_>) {
+    let wells = table.wells.as_ref().map_or(0, |wells| wells.value.len());
+    if wells < 2 {
+        let other = "wells: the name that is kept, then each well that joins it";
+        problems.tell(kind, ProblemKind::Needs { other });
+    }
+    let other = "kind = \"join\", which goes by wells and dates";
+    if let Some(at) = &table.analytes {
+        problems.tell(at, ProblemKind::Pointless { other });
+    }
+    if let Some(at) = &table.samples {
+        problems.tell(at, ProblemKind::Pointless { other });
+    }
+    if let Some(at) = &table.file {
+        problems.tell(at, ProblemKind::Pointless { other });
+    }
+    if let Some(at) = &table.records {
+        problems.tell(at, ProblemKind::Pointless { other });
     }
 }
 

@@ -1,6 +1,5 @@
 //! Keys of work that is not built yet: an error that says so, one line each to remove later.
 
-use super::super::delivery::Layout;
 use super::super::file::SiteFile;
 use super::super::problem::ProblemKind;
 use super::super::written::{At, Problems};
@@ -16,12 +15,7 @@ pub(super) fn refuse(file: &SiteFile, problems: &mut Problems<'_>) {
     }
     not_built(file.vapour.as_ref(), problems);
     not_built(file.attainment.as_ref(), problems);
-    if let Some(settings) = &file.settings {
-        not_built(settings.value.limit_order.as_ref(), problems);
-    }
     for rule in list(&file.results) {
-        not_built(rule.value.layout.as_ref().filter(|at| at.value != Layout::Long), problems);
-        not_built(rule.value.sheet.as_ref(), problems);
         not_built(rule.value.validation.as_ref(), problems);
     }
 }

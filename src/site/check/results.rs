@@ -15,6 +15,8 @@ impl ResultsRule {
     pub fn plain() -> Self {
         Self {
             files: "results/**".to_owned(),
+            layout: None,
+            sheet: None,
             encoding: None,
             separator: None,
             columns: BTreeMap::new(),
@@ -40,6 +42,8 @@ pub(super) fn check(at: &At<ResultsTable>, problems: &mut Problems<'_>) -> Resul
     let decimal = copy(&table.decimal).unwrap_or(plain.decimal);
     ResultsRule {
         files: copy(&table.files).unwrap_or(plain.files),
+        layout: copy(&table.layout),
+        sheet: copy(&table.sheet),
         encoding: copy(&table.encoding),
         separator: table.separator.as_ref().and_then(|at| separator(at, problems)),
         columns: table.columns.as_ref().map(|at| at.value.values()).unwrap_or_default(),

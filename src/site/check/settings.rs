@@ -11,9 +11,11 @@ use std::ops::RangeInclusive;
 use super::super::checked::{DateNeeds, FlagThresholds, OffDefault, RateNeeds, Settings};
 use super::super::choices::{Duplicates, NonDetects, RoundLength, SameDay, Setting};
 use super::super::file::{DateNeedsTable, FlagsTable, RateNeedsTable, SettingsTable, SiteFile};
+use super::super::limit_type::{LimitType, limit_type};
 use super::super::problem::ProblemKind;
 use super::super::written::{At, Problems};
-use super::{copy, day, within};
+use super::{copy, day, names, within};
+use crate::terms::folded;
 
 impl Default for Settings {
     fn default() -> Self {
@@ -31,6 +33,7 @@ impl Default for Settings {
             same_day: SameDay::Mean,
             duplicates: Duplicates::Primary,
             non_detects: NonDetects::Censored,
+            limit_order: Vec::new(),
             off_default: Vec::new(),
         }
     }
@@ -108,6 +111,7 @@ pub(super) fn check(file: &SiteFile, problems: &mut Problems<'_>) -> (Settings, 
         ),
     };
     settings.off_default = off.found;
+    settings.limit_order = limit_order(table.limit_order.as_ref(), problems);
     (settings, flags)
 }
 
@@ -212,6 +216,18 @@ impl Off<'_, '_> {
         within(at, &(3..=1000), self.problems);
         usize::try_from(at.value).unwrap_or(was)
     }
+}
+
+/// The order describes what the deliveries hold, as a column does, and needs no reason.
+fn limit_order(list: Option<&At<Vec<At<String>>>>, problems: &mut Problems<'_>) -> Vec<String> {
+    for at in list.iter().flat_map(|list| &list.value) {
+        let folded = folded(&at.value);
+        if folded.is_empty() || limit_type(&at.value) == LimitType::NoDetectionLimit {
+            let wants = "a type of reporting or detection limit, such as \"Reporting limit\"";
+            problems.tell(at, ProblemKind::WrongText { found: at.value.clone(), wants });
+        }
+    }
+    names::texts(list, problems)
 }
 
 impl Display for RateNeeds {

@@ -11,9 +11,9 @@ table! {
     ResultsTable {
         /// The files, as a pattern with / between folders, relative to the site folder.
         files = "files": String, needed as "files = \"results/*.csv\"";
-        /// How the files are laid out. Default "long", the only one built so far.
+        /// How the files are laid out: one result a line, or one result a cell. Default: as they show.
         layout = "layout": Layout;
-        /// Not built yet. The sheet of a workbook.
+        /// The sheet of a workbook that holds the results. Default: every sheet that holds a table.
         sheet = "sheet": String;
         /// The encoding, where it should not be found out.
         encoding = "encoding": Encoding;

@@ -51,7 +51,8 @@ table! {
         duplicates = "duplicates": Duplicates;
         /// What non-detects contribute to a fit. Default "censored".
         non_detects = "non-detects": NonDetects;
-        /// Not built yet. Types of limit columns in the order in which they are preferred.
+        /// Types of limits of the open water-quality standard that go before the others, the
+        /// preferred first. Default: reporting limits before detection limits.
         limit_order = "limit-order": Vec<At<String>>;
         /// The reason for each statistical setting or threshold off its default, by its key.
         why = "why": Keyed<Setting, String>;

@@ -87,24 +87,22 @@ fn files(lines: &mut Lines, run: &RunFacts) {
 
 /// Which header was read as which column: one line for all files that agree.
 fn columns(lines: &mut Lines, run: &RunFacts) {
-    let mut by_mapping: BTreeMap<Vec<String>, Vec<&str>> = BTreeMap::new();
-    for file in &run.files {
-        let read: Vec<String> = run
-            .mapping
-            .iter()
-            .filter(|mapped| mapped.file == file.name && !mapped.column.is_empty())
-            .map(|mapped| pair(&mapped.header, &mapped.column))
-            .collect();
-        if !read.is_empty() {
-            by_mapping.entry(read).or_default().push(&file.name);
-        }
+    let mut of_table: BTreeMap<(&str, &str), Vec<String>> = BTreeMap::new();
+    for mapped in run.mapping.iter().filter(|mapped| !mapped.column.is_empty()) {
+        let read = of_table.entry((&mapped.file, &mapped.sheet)).or_default();
+        read.push(pair(&mapped.header, &mapped.column));
+    }
+    let mut by_mapping: BTreeMap<Vec<String>, Vec<String>> = BTreeMap::new();
+    for ((file, sheet), read) in of_table {
+        let table = if sheet.is_empty() { file.to_owned() } else { format!("{file}:{sheet}") };
+        by_mapping.entry(read).or_default().push(table);
     }
     if by_mapping.is_empty() {
         return;
     }
     lines.heading("Columns");
     for (read, files) in by_mapping {
-        let files: Vec<String> = files.into_iter().map(shown).collect();
+        let files: Vec<String> = files.iter().map(|file| shown(file)).collect();
         lines.hanging(&format!("{}: {}", files.join(", "), read.join(", ")), 2, 4);
     }
 }
@@ -150,7 +148,7 @@ fn example(row: &LedgerRow) -> String {
     let place = if row.sheet.is_empty() {
         format!("{}:{}", shown(&row.file), shown(&row.record))
     } else {
-        format!("{}, {}:{}", shown(&row.file), shown(&row.sheet), shown(&row.record))
+        format!("{}:{}!{}", shown(&row.file), shown(&row.sheet), shown(&row.record))
     };
     let whose: Vec<String> =
         [&row.well, &row.analyte, &row.date, &row.reported, &row.unit, &row.qualifier]

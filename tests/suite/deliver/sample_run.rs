@@ -45,6 +45,8 @@ fn file(name: &str, records: usize, blank_lines: usize, encoding: &'static str) 
         sha256: format!("{records:064x}"),
         records,
         blank_lines,
+        empty_cells: 0,
+        sheets: Vec::new(),
         encoding,
     }
 }
