@@ -26,7 +26,9 @@ pub mod depths;
 pub mod frame;
 pub mod tidy;
 pub mod account;
+pub mod arrived;
 
+pub use arrived::{Arrived, Places};
 pub use frame::FrameError;
 pub use source::{Found, Sources};
 pub use tidy::{Tidy, tidy};

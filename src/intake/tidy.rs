@@ -33,6 +33,8 @@ pub struct Tidy {
     pub mapping: Vec<MappingFacts>,
     /// What is told about whole files.
     pub told: Vec<Told>,
+    /// To what stage each file was validated, where the site file says so.
+    pub validation: Vec<Option<String>>,
     /// How many records each decision touched, in the order of the site file.
     pub decided: Vec<usize>,
 }
@@ -61,6 +63,7 @@ pub fn tidy(
         (Texts::default(), Ledger::default(), Names::default());
     let (mut rows, mut files, mut mapping, mut told) =
         (Vec::new(), Vec::new(), Vec::new(), Vec::new());
+    let mut validation = Vec::new();
     for file in found {
         if !between(&file.name) {
             return Ok(None);
@@ -92,6 +95,7 @@ pub fn tidy(
             blank_lines: table.blank,
             encoding: table.encoding,
         });
+        validation.push(rule.validation.clone());
         describe(&table, &mut mapping, &mut told);
     }
     unite_spellings(&mut rows, &texts);
@@ -110,7 +114,18 @@ pub fn tidy(
         })
         .collect();
     let frame = frame(&rows)?;
-    Ok(Some(Tidy { frame, texts, ledger, files, unreadable, ignored, mapping, told, decided }))
+    Ok(Some(Tidy {
+        frame,
+        texts,
+        ledger,
+        files,
+        unreadable,
+        ignored,
+        mapping,
+        told,
+        validation,
+        decided,
+    }))
 }
 
 /// The mapping of one file, and what is told about the file as a whole.

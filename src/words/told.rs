@@ -2,6 +2,7 @@
 
 use super::clean::shown;
 use super::number::counted;
+use super::suspicion;
 use crate::findings::Note;
 use crate::ledger::Told;
 use crate::ledger::told::Expected;
@@ -109,6 +110,7 @@ pub fn detail(told: &Told) -> String {
         Told::SettingOffDefault { key, is } => {
             format!("setting {} is off its default: {}", shown(key), shown(is))
         }
+        Told::Suspected { what } => suspicion::detail(*what).into(),
         Told::LimitsDiffer => {
             "the non-detect's result and its reporting limit differ; the larger is its limit".into()
         }
@@ -170,6 +172,7 @@ pub fn weight(told: &Told) -> u8 {
         | Told::Recensored
         | Told::FileWithoutRecords { .. }
         | Told::SettingOffDefault { .. }
+        | Told::Suspected { .. }
         | Told::Revised { .. } => 2,
         Told::AnalyteNotListed { .. }
         | Told::UnknownQualifier { .. }

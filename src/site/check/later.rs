@@ -22,7 +22,6 @@ pub(super) fn refuse(file: &SiteFile, problems: &mut Problems<'_>) {
     for rule in list(&file.results) {
         not_built(rule.value.layout.as_ref().filter(|at| at.value != Layout::Long), problems);
         not_built(rule.value.sheet.as_ref(), problems);
-        not_built(rule.value.validation.as_ref(), problems);
     }
 }
 

@@ -2,7 +2,7 @@
 
 use chrono::{Days, NaiveDate};
 use ebbwell::findings::{
-    BandPoint, FileFacts, Findings, Fitted, Note, OutcomeCount, RunFacts, SeriesFinding, SiteFacts,
+    Arrival,     BandPoint, FileFacts, Findings, Fitted, Note, OutcomeCount, RunFacts, SeriesFinding, SiteFacts,
     UsedValue, WellFinding,
 };
 use ebbwell::ledger::Told;
@@ -326,6 +326,8 @@ pub fn run() -> RunFacts {
         off_default: Vec::new(),
         decisions: Vec::new(),
         mapping: Vec::new(),
+        applied: Vec::new(),
+        rpd_allowed: 30.0,
     }
 }
 
@@ -370,6 +372,7 @@ pub fn findings() -> Findings {
             },
             Note { told: Told::AveragedOf { n: 2 }, records: 2 },
         ],
+        arrival: Arrival::nothing(),
         series,
         wells,
     }

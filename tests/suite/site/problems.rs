@@ -300,7 +300,6 @@ fn work_that_is_not_built_is_an_error_that_says_so() {
         "[settings]\nlimit-order = [\"Reporting limit\"]",
         "[[results]]\nfiles = \"*\"\nlayout = \"cross-tab\"",
         "[[results]]\nfiles = \"*\"\nsheet = \"Data\"",
-        "[[results]]\nfiles = \"*\"\nvalidation = \"stage 2\"",
         "[[decision]]\nid = \"J\"\nkind = \"join\"\nwells = [\"MW-1\", \"MW-1R\"]\nwho = \"A\"\n\
          when = 2026-07-01\nwhy = \"replaced\"",
     ];
