@@ -1,7 +1,7 @@
 //! The statement on the quality of the data: what the quality control that came with it says.
 
 use super::clean::shown;
-use super::number::{counted, iso, people, reading, table};
+use super::number::{count, counted, iso, people, reading, table};
 use crate::findings::Arrival;
 use crate::series::pairs::Agreement;
 use crate::series::quality::{BlankDetect, Differing, SendBack, TIMES_BLANK};
@@ -25,14 +25,15 @@ fn duplicates(arrival: &Arrival, allowed: f64) -> String {
         0 => String::new(),
         n => format!(", {n} without a sample of that date"),
     };
-    let none = d.compared - d.differing.len();
+    let within = d.compared - d.differing.len();
     format!(
-        "{}{alone}: {} compared, {none} within the criterion (RPD {} %; near the reporting limit \
+        "{}{alone}: {} compared, {} within the criterion (RPD {} %; near the reporting limit \
          the difference is at most that limit), {} over it.",
         counted(d.records, "duplicate or split", "duplicates or splits"),
         counted(d.compared, "pair", "pairs"),
+        count(within),
         table(allowed),
-        d.differing.len(),
+        count(d.differing.len()),
     )
 }
 

@@ -1,8 +1,10 @@
 //! The one integration binary.
 #![allow(clippy::print_stdout, reason = "trials print their figures and say when they skip")]
 
+mod arrival;
 mod cli;
 mod demo;
+mod fuzz;
 mod intake;
 mod numerics;
 mod real;

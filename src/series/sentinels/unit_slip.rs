@@ -29,6 +29,8 @@ const TOGETHER: f64 = 0.75;
 struct Held<'a> {
     history: &'a History<'a>,
     seen: &'a Seen,
+    /// The files of the neighbours.
+    near: [Option<u32>; 4],
     ratio: f64,
     slips: bool,
 }
@@ -51,7 +53,9 @@ fn held<'a>(
 ) -> Option<Held<'a>> {
     let seen = &history.seen[at];
     let own = seen.ln()?;
-    let near: Vec<f64> = history.neighbours(at, counts).into_iter().filter_map(Seen::ln).collect();
+    let neighbours = history.neighbours(at, counts);
+    let files: Vec<u32> = neighbours.iter().map(|one| one.file).collect();
+    let near: Vec<f64> = neighbours.into_iter().filter_map(Seen::ln).collect();
     if near.len() < fewest {
         return None;
     }
@@ -59,52 +63,86 @@ fn held<'a>(
     let size = off.abs().exp();
     let stands_out = spread.is_none_or(|spread| off.abs() >= SPREADS * spread);
     let slips = (LEAST..=MOST).contains(&size) && stands_out;
-    Some(Held { history, seen, ratio: off.exp(), slips })
+    let near = std::array::from_fn(|at| files.get(at).copied());
+    Some(Held { history, seen, near, ratio: off.exp(), slips })
 }
 
 /// Slips that a file shares, against the other files.
 fn by_file(histories: &[History<'_>]) -> Vec<Sentinel> {
-    // A file's results by site and analyte.
-    let mut of_file: BTreeMap<(u32, &str, &str), Vec<Held<'_>>> = BTreeMap::new();
+    let mut analytes: BTreeMap<(&str, &str), Vec<&History<'_>>> = BTreeMap::new();
     for history in histories {
-        let several = history.seen.windows(2).any(|two| two[0].file != two[1].file);
-        for at in (0..history.seen.len()).filter(|_| several) {
-            let file = history.seen[at].file;
-            let counts = |one: &Seen| one.file != file && one.ln().is_some();
-            // The spread of the whole series would hold the slipped values too.
-            if let Some(held) = held(history, at, None, FEWEST_TOGETHER, counts) {
-                let key = &history.series.key;
-                of_file.entry((file, &key.site, &key.analyte)).or_default().push(held);
-            }
+        if history.seen.windows(2).any(|two| two[0].file != two[1].file) {
+            let key = &history.series.key;
+            analytes.entry((&key.site, &key.analyte)).or_default().push(history);
         }
     }
-    let together: BTreeMap<(u32, &str, &str), Vec<Held<'_>>> = of_file
-        .iter()
-        .filter_map(|(key, all)| Some((*key, slipping(all).filter(|slips| slips.len() >= 2)?)))
-        .collect();
+    let mut together: BTreeMap<(u32, &str), Vec<(&str, Vec<Held<'_>>)>> = BTreeMap::new();
+    let mut comparable: BTreeMap<(u32, &str), usize> = BTreeMap::new();
+    for ((site, analyte), of) in analytes {
+        for (file, held) in files_held(&of, &BTreeSet::new()) {
+            *comparable.entry((file, site)).or_default() += held.len();
+        }
+        for (file, slips) in files_slipping(&of) {
+            together.entry((file, site)).or_default().push((analyte, slips));
+        }
+    }
     let mut found = Vec::new();
-    let mut named: BTreeSet<u32> = BTreeSet::new();
-    let files: BTreeSet<u32> = together.keys().map(|(file, ..)| *file).collect();
-    for file in files {
-        let all: Vec<Held<'_>> = of_file
-            .iter()
-            .filter(|((of, ..), _)| *of == file)
-            .flat_map(|(_, all)| all.iter().copied())
-            .collect();
-        let analytes = together.keys().filter(|(of, ..)| *of == file).count();
-        if let Some(slips) = slipping(&all).filter(|_| analytes >= 2) {
-            named.insert(file);
-            found.push(sentinel(Scope::File, &slips));
+    for (key, analytes) in together {
+        let all: Vec<Held<'_>> = analytes.iter().flat_map(|(_, slips)| slips.clone()).collect();
+        #[allow(clippy::cast_precision_loss)] // counts of results
+        let share = all.len() as f64 / comparable.get(&key).copied().unwrap_or(usize::MAX) as f64;
+        let one_way = all.iter().all(|one| (one.ratio > 1.0) == (all[0].ratio > 1.0));
+        if analytes.len() >= 2 && one_way && share >= TOGETHER {
+            found.push(sentinel(Scope::File, &all));
+            continue;
         }
-    }
-    for ((file, _, analyte), slips) in &together {
-        if !named.contains(file) {
-            let mut one = sentinel(Scope::Analyte, slips);
-            one.analyte = Some((*analyte).to_owned());
+        for (analyte, slips) in analytes {
+            let mut one = sentinel(Scope::Analyte, &slips);
+            one.analyte = Some(analyte.to_owned());
             found.push(one);
         }
     }
     found
+}
+
+/// The files whose results of one analyte slip together. Of files that accuse each other, the one
+/// that most other files accuse has slipped, of equals the one delivered last; what has slipped
+/// accuses nobody any more.
+fn files_slipping<'a>(of: &[&'a History<'a>]) -> Vec<(u32, Vec<Held<'a>>)> {
+    let mut found: Vec<(u32, Vec<Held<'_>>)> = Vec::new();
+    let mut slipped: BTreeSet<u32> = BTreeSet::new();
+    loop {
+        let accused = files_held(of, &slipped).into_iter().filter_map(|(file, held)| {
+            let slips = slipping(&held).filter(|slips| slips.len() >= 2)?;
+            let accusers: BTreeSet<u32> = slips.iter().flat_map(|one| one.near).flatten().collect();
+            Some((accusers.len(), file, slips))
+        });
+        let Some((_, file, slips)) = accused.max_by_key(|one| (one.0, one.1)) else {
+            return found;
+        };
+        slipped.insert(file);
+        found.push((file, slips));
+    }
+}
+
+/// The results of one analyte by file, each held against the other files that have not slipped.
+fn files_held<'a>(of: &[&'a History<'a>], slipped: &BTreeSet<u32>) -> BTreeMap<u32, Vec<Held<'a>>> {
+    let mut files: BTreeMap<u32, Vec<Held<'_>>> = BTreeMap::new();
+    for history in of {
+        for at in 0..history.seen.len() {
+            let file = history.seen[at].file;
+            let counts =
+                |one: &Seen| one.file != file && !slipped.contains(&one.file) && one.ln().is_some();
+            // The spread of the whole series would hold the slipped values too.
+            let fewest = FEWEST_TOGETHER;
+            if let Some(held) =
+                held(history, at, None, fewest, counts).filter(|_| !slipped.contains(&file))
+            {
+                files.entry(file).or_default().push(held);
+            }
+        }
+    }
+    files
 }
 
 /// Those that slip one way, if they are most of them.

@@ -1,0 +1,1 @@
+//! Inputs that once failed, made small.
