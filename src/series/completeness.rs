@@ -194,12 +194,26 @@ fn why(account: &Account, codes: (Code, Code), round: Round, needed: usize) -> O
         return None;
     }
     let of_well = account.get(&(codes.0, 0)).and_then(|rounds| rounds.get(&round));
-    let gap = held.gap.or_else(|| of_well.and_then(|held| held.gap));
+    let gap = held
+        .gap
+        .or_else(|| of_well.and_then(|held| held.gap))
+        .or_else(|| destroyed(account, codes.0, round));
     Some(match (held.not_used, gap) {
         (Some(fate), _) => Why::NotUsed(fate),
         (None, Some(gap)) => Why::Gap(gap),
         (None, None) => Why::Unknown,
     })
+}
+
+/// A well that was destroyed stays so, until it holds something again.
+fn destroyed(account: &Account, well: Code, round: Round) -> Option<NonResult> {
+    let rounds = account.get(&(well, 0))?;
+    let gone = |held: &Held| held.gap == Some(NonResult::Destroyed);
+    let (since, _) = rounds.range(..round).rev().find(|(_, held)| gone(held))?;
+    let again = account
+        .range((well, 0)..=(well, Code::MAX))
+        .any(|(_, rounds)| rounds.range(*since..=round).skip(1).any(|(_, held)| held.dates > 0));
+    (!again).then_some(NonResult::Destroyed)
 }
 
 /// What each round holds of every well and analyte.

@@ -1,7 +1,7 @@
 //! What is suspected on arrival: a label, what it means, what to do, and one sentence each.
 
 use super::clean::shown;
-use super::number::{counted, iso, people, table};
+use super::number::{count, counted, iso, people, table};
 use super::round;
 use crate::findings::Arrival;
 use crate::ledger::told::Suspicion;
@@ -203,9 +203,14 @@ fn results(one: &Sentinel) -> String {
 
 /// `1,040 times`, or `1/1,040 of`.
 fn times(ratio: f64) -> String {
+    // Three digits are enough of a ratio of about 1,000.
+    let rounded = |times: f64| match people(times).parse::<usize>() {
+        Ok(whole) => count(whole),
+        Err(_) => people(times),
+    };
     if ratio >= 1.0 {
-        format!("{} times", people(ratio))
+        format!("{} times", rounded(ratio))
     } else {
-        format!("1/{} of", people(1.0 / ratio))
+        format!("1/{} of", rounded(1.0 / ratio))
     }
 }

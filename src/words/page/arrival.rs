@@ -6,14 +6,14 @@ use crate::series::Sentinel;
 use crate::series::completeness::Asked;
 use crate::words::layout::Lines;
 use crate::words::number::{count, counted};
-use crate::words::{completeness, quality, suspicion};
+use crate::words::{completeness, quality, round, suspicion};
 
 /// How many examples of each kind a page names.
 const NAMED: usize = 3;
 
 /// What is suspected, a kind after the other; what only the quality of the data tells is left to
 /// that section.
-pub fn suspicions(lines: &mut Lines, arrival: &Arrival) {
+pub fn suspicions(lines: &mut Lines, run: &RunFacts, arrival: &Arrival) {
     let kinds: Vec<(Suspicion, Vec<&Sentinel>)> = Suspicion::ALL
         .iter()
         .filter(|kind| **kind != Suspicion::LimitOverLimit)
@@ -29,14 +29,22 @@ pub fn suspicions(lines: &mut Lines, arrival: &Arrival) {
         );
     }
     for (kind, of) in kinds {
-        lines.hanging(&format!("{}  {} [{}]", count(of.len()), label(kind), kind.code()), 2, 6);
+        let now = of.iter().filter(|one| is_of_the_round(one, arrival, run)).count();
+        let now = match kind {
+            Suspicion::MissingFromPanel => format!(", {} of them in this round", count(now)),
+            _ => String::new(),
+        };
+        let label = suspicion::label(kind);
+        lines.hanging(&format!("{}  {label}{now} [{}]", count(of.len()), kind.code()), 2, 6);
         examples(lines, of.len(), of.iter().map(|one| suspicion::sentence(one, arrival)));
         lines.hanging(&format!("do: {}", suspicion::step(kind)), 6, 8);
     }
 }
 
-fn label(kind: Suspicion) -> &'static str {
-    suspicion::label(kind)
+/// Whether a sentinel is dated in the round of the as-of date.
+fn is_of_the_round(one: &Sentinel, arrival: &Arrival, run: &RunFacts) -> bool {
+    let label = |date| round::label(date, arrival.round);
+    one.date.is_some_and(|date| label(date) == label(run.as_of))
 }
 
 /// The sentinels of a kind, those of the newest date first.

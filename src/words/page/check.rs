@@ -63,7 +63,7 @@ pub fn check(facts: &CheckFacts<'_>, options: &PageOptions<'_>) -> String {
     not_used_in_short(&mut lines, facts.run);
     let next = format!("ebbwell review {}", shell_word(options.site_argument));
     to_do(&mut lines, facts.run, facts.arrival, &next);
-    arrival::suspicions(&mut lines, facts.arrival);
+    arrival::suspicions(&mut lines, facts.run, facts.arrival);
     arrival::quality(&mut lines, facts.run, facts.arrival);
     arrival::completeness(&mut lines, facts.arrival);
     not_used(&mut lines, facts);

@@ -38,8 +38,9 @@ pub fn steps(run: &RunFacts, arrival: &Arrival) -> Vec<String> {
         let n = arrival.of(kind).count();
         let fact = matches!(kind, Suspicion::LimitOverLimit | Suspicion::MissingFromPanel);
         if n > 0 && !fact {
-            let step = suspicion::step(kind);
-            steps.push(format!("{} × {}: {step}.", count(n), suspicion::label(kind)));
+            let found = counted(n, "case", "cases");
+            let (label, step) = (suspicion::label(kind), suspicion::step(kind));
+            steps.push(format!("{}, {found}: {step}.", capitalised(label)));
         }
     }
     let reasons = account::reasons(run, Outcome::SetAside);
@@ -47,6 +48,10 @@ pub fn steps(run: &RunFacts, arrival: &Arrival) -> Vec<String> {
         .iter()
         .filter_map(|reason| {
             let step = fate::what_to_do_by_code(&reason.reason)?;
+            // A reason that asks for nothing is no step.
+            if step.starts_with("nothing") {
+                return None;
+            }
             let what = fate::reason(reason.outcome, &reason.reason);
             Some(format!("{} set aside, {what}: {step}.", count(reason.records)))
         })
@@ -70,12 +75,17 @@ pub fn steps(run: &RunFacts, arrival: &Arrival) -> Vec<String> {
     let lacking = &arrival.completeness.lacking;
     let unexplained = lacking.iter().filter(|one| completeness::why_code(one.why).is_empty());
     if let n @ 1.. = unexplained.count() {
-        steps.push(format!(
-            "{} of this round missing without a reason: ask for them.",
-            counted(n, "result is", "results are")
-        ));
+        let results = counted(n, "result of this round is", "results of this round are");
+        steps.push(format!("{results} missing without a reason: ask for them."));
     }
     steps
+}
+
+/// A sentence begins with a capital.
+fn capitalised(text: &str) -> String {
+    let mut rest = text.chars();
+    let first: String = rest.next().map(|first| first.to_uppercase().collect()).unwrap_or_default();
+    format!("{first}{}", rest.as_str())
 }
 
 fn more_reasons(n: usize) -> String {

@@ -66,6 +66,19 @@ fn a_sample_a_few_days_past_the_edge_counts_for_the_round_it_belongs_to() {
 }
 
 #[test]
+fn a_destroyed_well_is_a_reason_until_it_holds_something_again() {
+    let destroyed = "well,analyte,date,result,unit,sample_type\n\
+                     W-1,PCE,2023-02-05,4,ug/L,Regular\nW-2,PCE,2023-02-05,4,ug/L,Regular\n\
+                     W-1,PCE,2023-05-05,,,Destroyed\nW-2,PCE,2024-02-05,4,ug/L,Regular\n";
+    let expected = "[[expected]]\nwells = [\"W-1\"]\nanalytes = [\"PCE\"]\nevery = 3\n";
+    let told = lacking(&check_table(destroyed, &site(expected)).arrival);
+    assert_eq!(told, ["W-1: PCE (the well is destroyed)"]);
+    let again = format!("{destroyed}W-1,PCE,2023-08-05,4,ug/L,Regular\n");
+    let told = lacking(&check_table(&again, &site(expected)).arrival);
+    assert_eq!(told, ["W-1: PCE (no record, no reason)"]);
+}
+
+#[test]
 fn without_an_expectation_nothing_is_missing_and_that_is_said() {
     let findings = check_table(TABLE, &site(""));
     assert_eq!(

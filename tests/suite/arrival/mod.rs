@@ -2,6 +2,7 @@
 
 mod completeness;
 mod dates;
+mod page;
 mod quality;
 mod real;
 mod sentinels;
