@@ -114,6 +114,14 @@ pub fn completeness(
             RoundCount { date, due: 0, received: 0, not_used: 0, explained: 0, missing: 0 };
         for (well, analyte, well_code, analyte_code, every) in &due {
             let codes = (*well_code, *analyte_code);
+            // Before its first record nothing was asked of a well, but for the current round.
+            let begun = account
+                .get(&codes)
+                .and_then(|rounds| rounds.keys().next())
+                .is_some_and(|first| *first <= round);
+            if !begun && round != current {
+                continue;
+            }
             let Some(needed) = dates_due(&account, codes, round, *every, rules) else { continue };
             count.due += 1;
             let why = match why(&account, codes, round, needed) {
