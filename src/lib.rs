@@ -15,14 +15,14 @@
 //! | [`fit`] | points → [`fit::Fit`], or why there is none |
 //! | [`project`] | fit and limit → raw dates with their ends |
 //! | [`judge`] | the verdict, the dates that are shown, the pace, the flags |
+//! | [`doubts`] | everything that fits again: diagnostics, other models, other choices |
 //! | [`findings`] | [`findings::Findings`], all that a run found out |
 //! | [`words`] | every label, sentence and explanation |
 //! | [`deliver`] | tables, charts, JSON; `deliver::write` alone makes files |
 //! | [`run`](mod@run) | the stages in order: [`run::run`] takes a [`run::Job`] |
 //!
-//! Places are kept for `earlier` (after intake: an earlier output folder), `doubts` and `review`
-//! (after judge: refits; rounds held against rounds), `flowpath` and `chain` (before findings), and
-//! `verify` (after run).
+//! Places are kept for `earlier` (after intake: an earlier output folder), `review` (after doubts:
+//! rounds held against rounds), `flowpath` and `chain` (before findings), and `verify` (after run).
 //!
 //! The promise to users covers [`run::run`], [`run::Job`], [`findings::Findings`] and
 //! [`numerics`]; everything else is `pub` so that the one test binary reaches it.
@@ -36,6 +36,7 @@ pub mod series;
 pub mod fit;
 pub mod project;
 pub mod judge;
+pub mod doubts;
 pub mod findings;
 pub mod words;
 pub mod deliver;

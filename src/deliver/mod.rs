@@ -6,6 +6,7 @@ pub mod arrival_json;
 pub mod json;
 pub mod cells;
 pub mod tables;
+pub mod doubts_json;
 pub mod summary_json;
 pub mod run_json;
 pub mod page_json;

@@ -127,6 +127,7 @@ pub fn series(series: &SeriesFinding, level: f64) -> Json {
     members.push(("beyond_horizon", Json::Bool(series.beyond_horizon)));
     members.push(("stands_in_the_way", Json::Bool(series.stands_in_the_way)));
     members.push(("sentence", Json::Text(series_sentence::series_sentence(series, level))));
+    members.extend(super::doubts_json::doubts(series));
     members.push(("duplicates", Json::List(series.duplicates.iter().map(duplicate).collect())));
     members.push(("records", outcomes(&series.records)));
     Json::Object(members)

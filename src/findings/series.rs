@@ -6,7 +6,8 @@ use crate::series::SeriesKey;
 use crate::site::Role;
 pub use crate::terms::BandPoint;
 use crate::terms::{
-    Flag, Method, Pace, PerYear, Reading, Span, Unit, Verdict, WhyNoDate, WhyNoRate,
+    Adjusted, Choice, ChoiceSpan, Flag, Method, ModelFit, MoreRounds, Pace, PerYear, Reading, Span,
+    Unit, Verdict, WhyNoDate, WhyNoRate,
 };
 
 /// One series; a field that does not apply is `None`, never zero.
@@ -110,6 +111,8 @@ pub struct SeriesFinding {
     pub earliest_beyond_horizon: bool,
     /// Whether the late end of the reach interval lies beyond the horizon.
     pub latest_beyond_horizon: bool,
+    /// The last date that people read as a date.
+    pub horizon: Option<NaiveDate>,
     /// Whether the series stands in the way of the site's date.
     pub stands_in_the_way: bool,
     /// The value of each date, those outside the window too.
@@ -120,6 +123,18 @@ pub struct SeriesFinding {
     pub duplicates: Vec<DuplicateFinding>,
     /// How many records of each fate the series has, by outcome and reason code.
     pub records: Vec<super::OutcomeCount>,
+    /// Whether the better model denies the date that the line gives.
+    pub alternative_denies: bool,
+    /// Every model on the same data.
+    pub models: Vec<ModelFit>,
+    /// The rate's interval with correlation allowed for, where that is found.
+    pub adjusted: Option<Adjusted>,
+    /// What other choices would say, a span a kind.
+    pub spans: Vec<ChoiceSpan>,
+    /// The single choice or sample that matters most.
+    pub most_telling: Option<Choice>,
+    /// How much more sampling would settle it.
+    pub more_rounds: MoreRounds,
 }
 
 /// One date's value as used.csv lists it.

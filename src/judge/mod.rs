@@ -21,7 +21,12 @@ pub fn flags(facts: &Facts<'_>, judged: &Judged, shown: &Shown) -> Vec<Flag> {
     let mut flags = record_flags::flags(facts);
     flags.extend(value_flags::flags(facts));
     flags.extend(fit_flags::flags(facts, judged, shown));
+    sort_flags(&mut flags);
+    flags
+}
+
+/// Puts flags in the order of the list.
+pub fn sort_flags(flags: &mut [Flag]) {
     let place = |code: FlagCode| FlagCode::ALL.iter().position(|known| *known == code);
     flags.sort_by_key(|flag| place(flag.code));
-    flags
 }

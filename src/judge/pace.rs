@@ -28,13 +28,14 @@ pub fn pace(facts: &Facts<'_>, judged: &Judged, shown: &Shown) -> Option<Pace> {
 
 /// Whether the series stands in the way of the site's date: it has a limit, its well is not
 /// background, it is neither below nor undetected under low enough limits, and it has no reach
-/// date with a latest. One that met its limit before its record does not stand in the way.
+/// date with a latest, or a better model denies the date. One that met its limit before its record does not stand in the way.
 #[must_use]
 pub fn stands_in_the_way(
     facts: &Facts<'_>,
     judged: &Judged,
     shown: &Shown,
     role: crate::site::Role,
+    denied: bool,
 ) -> bool {
     let Some(limit) = facts.limit() else { return false };
     let seen_low_enough =
@@ -45,7 +46,8 @@ pub fn stands_in_the_way(
     if judged.verdict == Verdict::Undetected && seen_low_enough() {
         return false;
     }
-    if judged.results_deny_line {
+    // The last results, or a better model, deny the date that the line gives.
+    if judged.results_deny_line || denied {
         return true;
     }
     let met_before = shown.latest_before_record;

@@ -3,6 +3,7 @@
 //! The straight line has a likelihood of its own, written for speed; this one serves every other
 //! mean that is a sum of columns: a bend, a known break, seasons.
 
+use super::cholesky::Factor;
 use super::normal::{HALF_LN_TWO_PI, lower_tail};
 use super::peak::{MOST_HALVINGS, MOST_STEPS, SMALL_DECREMENT, SURE_DECREMENT};
 use super::points::Mark;
@@ -40,7 +41,7 @@ struct Pass<const K: usize> {
     /// By θ, then by each δ.
     by_theta: f64,
     by_delta: [f64; K],
-    /// Minus the second derivatives.
+    /// Minus the second derivatives, the last as its lower triangle.
     theta_theta: f64,
     theta_delta: [f64; K],
     delta_delta: [[f64; K]; K],
@@ -196,11 +197,11 @@ impl<const K: usize> Scaled<'_, K> {
 }
 
 impl<const K: usize> Pass<K> {
-    /// Newton's step: the δ are eliminated by Cholesky's method, then θ is solved for.
+    /// Newton's step: the δ are eliminated, then θ is solved for.
     fn step(&self) -> Option<Place<K>> {
-        let root = cholesky(&self.delta_delta)?;
-        let by_theta = solve(&root, &self.theta_delta);
-        let by_gradient = solve(&root, &self.by_delta);
+        let factor = Factor::of(&self.delta_delta)?;
+        let by_theta = factor.solve(self.theta_delta);
+        let by_gradient = factor.solve(self.by_delta);
         let rest = self.theta_theta - dot(&self.theta_delta, &by_theta);
         if !(rest > 0.0 && rest.is_finite()) {
             return None;
@@ -220,40 +221,4 @@ impl<const K: usize> Place<K> {
 
 fn dot<const K: usize>(x: &[f64; K], y: &[f64; K]) -> f64 {
     x.iter().zip(y).map(|(x, y)| x * y).sum()
-}
-
-/// The lower triangle L with L·Lᵀ = `matrix`, of which the lower triangle is read.
-fn cholesky<const K: usize>(matrix: &[[f64; K]; K]) -> Option<[[f64; K]; K]> {
-    let mut root = [[0.0; K]; K];
-    for i in 0..K {
-        for j in 0..=i {
-            let rest = matrix[i][j] - (0..j).map(|k| root[i][k] * root[j][k]).sum::<f64>();
-            root[i][j] = if i > j {
-                rest / root[j][j]
-            } else if rest > 0.0 && rest.is_finite() {
-                rest.sqrt()
-            } else {
-                return None;
-            };
-        }
-    }
-    Some(root)
-}
-
-/// Solves L·Lᵀ·x = `right`.
-fn solve<const K: usize>(root: &[[f64; K]; K], right: &[f64; K]) -> [f64; K] {
-    let mut x = *right;
-    for i in 0..K {
-        for k in 0..i {
-            x[i] -= root[i][k] * x[k];
-        }
-        x[i] /= root[i][i];
-    }
-    for i in (0..K).rev() {
-        for k in i + 1..K {
-            x[i] -= root[k][i] * x[k];
-        }
-        x[i] /= root[i][i];
-    }
-    x
 }

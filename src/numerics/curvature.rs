@@ -10,9 +10,9 @@ use super::tails;
 /// factors and a scatter; with fewer the likelihood has no maximum.
 const DATES_NEEDED: usize = 4;
 
-/// The bent line fits measured values exactly where it leaves less than this share of their sum of
-/// squares (a pure number). Source: rounding of the residuals.
-const NOTHING_LEFT: f64 = 1e-24;
+/// Measured values lie on a bent line where their residual sum of squares is under this share of
+/// 1 + Σy² (a pure number). Source: as ruled for the straight line.
+const ON_A_BEND: f64 = 1e-20;
 
 /// A quadratic term added to a straight line.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -89,10 +89,10 @@ fn by_least_squares(
         y - through.fitted(t) - coefficient * (square - bent.fitted(t))
     };
     let rss: f64 = t.iter().zip(y).zip(&squares).map(residual).map(|e| e * e).sum();
-    if rss.is_nan() || rss <= NOTHING_LEFT * through.tss {
+    let n = through.n as f64;
+    if !scattered(rss, points) {
         return None;
     }
-    let n = through.n as f64;
     let degrees = n - 3.0;
     let error = (rss / degrees / size).sqrt();
     let student = coefficient / error;
@@ -121,6 +121,9 @@ fn by_likelihood(points: Points<'_>, straight: &FirstOrder) -> Option<Curvature>
         .collect();
     let guess = [straight.fitted(centre), straight.slope * unit, 0.0];
     let bent = columns(&x, points.y(), points.mark(), guess, straight.ml_scale)?;
+    if !scattered(bent.scale * bent.scale * points.count(Mark::Measured) as f64, points) {
+        return None;
+    }
     let coefficient = bent.factors[2] / (unit * unit);
     let lr = (2.0 * (bent.log_likelihood - straight.log_likelihood)).max(0.0);
     let degrees = straight.m - 2.0;
@@ -134,6 +137,12 @@ fn by_likelihood(points: Points<'_>, straight: &FirstOrder) -> Option<Curvature>
         degrees,
         p: tails::student_two_sided(student, degrees),
     })
+}
+
+/// Whether these squares are more than the rounding of measured values on a bent line.
+fn scattered(squares: f64, points: Points<'_>) -> bool {
+    let measured = points.iter().filter(|point| point.mark == Mark::Measured);
+    squares >= ON_A_BEND * (1.0 + measured.map(|point| point.y * point.y).sum::<f64>())
 }
 
 /// Number of distinct times with measured values.

@@ -4,8 +4,8 @@ use super::censored::{CensoredLine, UNINFORMATIVE};
 use super::curvature::measured_times;
 use super::deletion::{Farthest, deletion_diagnostics};
 use super::first_order::{FirstOrder, first_order};
-use super::line::Line;
 use super::likelihood::Pass;
+use super::line::Line;
 use super::normal::{self, lower_tail};
 use super::peak::{Peak, SMALL_DECREMENT, solve3};
 use super::points::{Mark, NoLine, Point, Points};
@@ -143,7 +143,8 @@ pub fn worth_leaving_out(points: Points<'_>, most: usize) -> Vec<usize> {
     if n <= most {
         return order;
     }
-    let cook = if points.all_measured() { deletion_diagnostics(points.t(), points.y()) } else { None };
+    let cook =
+        if points.all_measured() { deletion_diagnostics(points.t(), points.y()) } else { None };
     let mut chosen: Vec<usize> = match cook {
         Some(all) => {
             let size = |i: usize| all[i].cook.unwrap_or(f64::INFINITY);
@@ -274,8 +275,7 @@ fn take_out(pass: &mut Pass, at: Olsen, u: f64, w: f64, mark: Mark) {
 
 /// How far a point that took no part lies from a line, in units of what it should.
 fn studentized(z: f64, u: f64, spread: &Spread, m: f64) -> f64 {
-    let level = spread.level_variance
-        + u * (2.0 * spread.covariance + u * spread.slope_variance);
+    let level = spread.level_variance + u * (2.0 * spread.covariance + u * spread.slope_variance);
     z * ((m - 2.0) / m).sqrt() / (1.0 + spread.a * spread.a * level).sqrt()
 }
 

@@ -122,9 +122,8 @@ fn upper_coefficients(n: usize) -> Vec<f64> {
     if n == FEWEST {
         return vec![std::f64::consts::FRAC_1_SQRT_2];
     }
-    let score = |rank: usize| {
-        tails::normal_quantile((rank as f64 + 1.0 - BLOM[0]) / (n as f64 + BLOM[1]))
-    };
+    let score =
+        |rank: usize| tails::normal_quantile((rank as f64 + 1.0 - BLOM[0]) / (n as f64 + BLOM[1]));
     let mut scores: Vec<f64> = (0..n / 2).map(score).collect();
     let square = 2.0 * scores.iter().map(|m| m * m).sum::<f64>();
     let u = 1.0 / (n as f64).sqrt();

@@ -1,8 +1,10 @@
 //! Theil and Sen's slope: the median of the slopes of all pairs.
 
+use super::critical_slopes::{CriticalSlopes, Ends};
 use super::interval::Interval;
 use super::kendall::mann_kendall;
-use super::slope_selection::PairSlopes;
+use super::points::{Mark, Points};
+use super::slope_selection::{PAIRS_UP_TO, PairSlopes};
 use super::tails;
 
 /// A line by medians.
@@ -43,11 +45,14 @@ pub struct TheilSen {
 /// Gilbert (1987), p. 218 [second hand]. Worked examples W02, W04, W05, W20; 916 real series.
 pub fn theil_sen(t: &[f64], y: &[f64], confidence: f64) -> Option<TheilSen> {
     let test = mann_kendall(t, y)?;
+    let spread = tails::normal_quantile(0.5 * (1.0 - confidence)) * test.variance.sqrt();
+    if y.len() > PAIRS_UP_TO {
+        return by_counting(t, y, spread);
+    }
     let mut slopes = PairSlopes::new(t, y);
     let pairs = slopes.count();
     let slope = slopes.ranked(pairs.div_ceil(2))?;
     let slope = if pairs % 2 == 1 { slope.at } else { 0.5 * (slope.at + slope.next) };
-    let spread = tails::normal_quantile(0.5 * (1.0 - confidence)) * test.variance.sqrt();
     let (first, last) = (0.5 * (pairs as f64 - spread), 0.5 * (pairs as f64 + spread) + 1.0);
     let interval = if first >= 1.0 {
         let low = between_ranks(&mut slopes, first)?;
@@ -58,6 +63,20 @@ pub fn theil_sen(t: &[f64], y: &[f64], confidence: f64) -> Option<TheilSen> {
     };
     let intercept = median(y)? - slope * median(t)?;
     Some(TheilSen { slope, intercept, interval, pairs })
+}
+
+/// The same for many points, on the staircase of S.
+fn by_counting(t: &[f64], y: &[f64], spread: f64) -> Option<TheilSen> {
+    let mark = vec![Mark::Measured; t.len()];
+    let mut slopes = CriticalSlopes::new(Points::new(t, y, &mark).ok()?);
+    let zero = slopes.zero()?;
+    let slope = 0.5 * (zero.low + zero.high);
+    let interval = match slopes.ends(spread) {
+        Ends { low: Some(low), high: Some(high) } => Some(Interval { low, high }),
+        _ => None,
+    };
+    let intercept = median(y)? - slope * median(t)?;
+    Some(TheilSen { slope, intercept, interval, pairs: slopes.rises() })
 }
 
 /// The slope at a rank that need not be whole.

@@ -76,7 +76,7 @@ fn series_finding(
     series: &WellSeries,
     computed: Computed,
 ) -> Result<SeriesFinding, Error> {
-    let Computed { points, fit, ranks, judged, shown, pace, flags, detects, role, .. } = computed;
+    let Computed { points, fit, ranks, judged, shown, doubts, flags, detects, role, .. } = computed;
     let fit = fit.ok();
     let limit = series.limit.as_ref().map(|limit| limit.value);
     let level_now = fit.as_ref().map(|fit| fit.level_now());
@@ -97,7 +97,7 @@ fn series_finding(
         sampled: points.span(),
         last_result: points.fitted().last().map(|value| value.reading),
         verdict: judged.verdict,
-        pace,
+        pace: doubts.pace,
         method: judged.method,
         rate_per_year: fit.as_ref().map(|fit| fit.rate),
         rate_lower: fit.as_ref().map(|fit| PerYear(fit.rate_interval.low)),
@@ -117,8 +117,8 @@ fn series_finding(
         kendall_s: ranks.map(|(kendall, _)| kendall.s),
         kendall_p: ranks.map(|(kendall, _)| kendall.p),
         sen_rate_per_year: sen.map(|sen| -sen.slope),
-        sen_rate_lower: sen.and_then(|sen| sen.interval).map(|interval| -interval.high),
-        sen_rate_upper: sen.and_then(|sen| sen.interval).map(|interval| -interval.low),
+        sen_rate_lower: sen.and_then(|sen| sen.high).map(|high| -high),
+        sen_rate_upper: sen.and_then(|sen| sen.low).map(|low| -low),
         reach_date: shown.reach,
         reach_earliest: shown.earliest,
         reach_latest: shown.latest,
@@ -128,9 +128,9 @@ fn series_finding(
         required_rate_per_year: fit.as_ref().and_then(|fit| {
             required_rate(fit.level_now(), limit?, fit.used.last, series.goal_date?)
         }),
-        alternative_model: None,
-        alternative_date: None,
-        rounds_to_decisive: None,
+        alternative_model: doubts.alternative.map(|alternative| alternative.model.code()),
+        alternative_date: doubts.alternative.and_then(|alternative| alternative.date),
+        rounds_to_decisive: doubts.rounds.decisive,
         previous_verdict: None,
         reach_shift_years: None,
         why_no_rate: judged.why_no_rate,
@@ -139,11 +139,18 @@ fn series_finding(
         beyond_horizon: beyond(shown.reach),
         earliest_beyond_horizon: beyond(shown.earliest),
         latest_beyond_horizon: beyond(shown.latest),
+        horizon: shown.horizon,
         stands_in_the_way: computed.stands_in_the_way,
         values: points.dates.iter().map(|value| used_value(value, fit.as_ref(), tidy)).collect(),
         fitted: fit.as_ref().map(|fit| Fitted { used: fit.used, band: computed.band }),
         duplicates: duplicates(series, job.site.flags.duplicates_rpd, tidy),
         records: tidy.counts_of(&series.records, &job.site)?,
+        alternative_denies: doubts.alternative.is_some_and(|alternative| alternative.denies),
+        models: doubts.models,
+        adjusted: doubts.adjusted,
+        spans: doubts.spans,
+        most_telling: doubts.most_telling,
+        more_rounds: doubts.rounds,
     })
 }
 

@@ -3,15 +3,18 @@
 use chrono::NaiveDate;
 
 use super::job::{Job, Kind};
+use crate::doubts::{Doubts, Setup, doubts};
 use crate::fit::{Fit, FitRules, RateSign, fit};
 use crate::judge::facts::Kendall;
 use crate::judge::pace::stands_in_the_way;
-use crate::judge::{Facts, JudgeRules, Judged, Shown, flags, pace, shown, verdict};
-use crate::numerics::{TheilSen, mann_kendall, theil_sen};
+use crate::judge::{Facts, JudgeRules, Judged, Shown, flags, shown, sort_flags, verdict};
+use crate::numerics::{
+    Points as NumericPoints, akritas_theil_sen, certain_pairs, mann_kendall, theil_sen,
+};
 use crate::project::{Projection, band, project};
-use crate::series::{MergeRules, Points, RoundRules, WellSeries, points, window_for};
+use crate::series::{LeaveOut, MergeRules, Points, RoundRules, WellSeries, points, window_for};
 use crate::site::{Role, Site};
-use crate::terms::{BandPoint, Effort, Flag, Pace, WhyNoRate, years_between};
+use crate::terms::{BandPoint, Effort, Flag, WhyNoRate, years_between};
 
 /// The rules of a run.
 pub struct Rules<'a> {
@@ -27,14 +30,14 @@ pub struct Computed {
     pub points: Points,
     /// The fit, or why there is none.
     pub fit: Result<Fit, WhyNoRate>,
-    /// Kendall's test and Theil–Sen, where every value is measured.
-    pub ranks: Option<(Kendall, Option<TheilSen>)>,
+    /// Kendall's test and Theil–Sen.
+    pub ranks: Option<(Kendall, Option<Sen>)>,
     /// The verdict.
     pub judged: Judged,
     /// The dates.
     pub shown: Shown,
-    /// The pace.
-    pub pace: Option<Pace>,
+    /// What refits found out, the pace among it.
+    pub doubts: Doubts,
     /// The flags.
     pub flags: Vec<Flag>,
     /// Dates with a detect in the window.
@@ -62,6 +65,7 @@ impl<'a> Rules<'a> {
             same_day: settings.same_day,
             duplicates: settings.duplicates,
             non_detects: settings.non_detects,
+            leave_out: LeaveOut::Nothing,
         }
     }
 
@@ -104,7 +108,8 @@ impl<'a> Rules<'a> {
 /// nothing.
 #[must_use]
 pub fn compute(series: &WellSeries, rules: &Rules<'_>, kind: Kind) -> Computed {
-    let points = points(series, &rules.merge(series));
+    let merge = rules.merge(series);
+    let points = points(series, &merge);
     let settings = &rules.site.settings;
     let fitted = match kind {
         Kind::Check => Err(WhyNoRate::NoDatesInWindow),
@@ -127,12 +132,22 @@ pub fn compute(series: &WellSeries, rules: &Rules<'_>, kind: Kind) -> Computed {
     let judged = verdict(&facts);
     let shown = shown(&facts, &judged);
     let role = rules.site.role_of(&series.key.well);
-    let pace = match rules.effort {
-        Effort::Full => pace(&facts, &judged, &shown),
-        Effort::Quick => None,
+    let mut flags = flags(&facts, &judged, &shown);
+    let doubts = match (rules.effort, kind) {
+        (Effort::Full, Kind::Review) => {
+            let setup = Setup {
+                merge: &merge,
+                rate_needs: settings.rate_needs,
+                events: &rules.site.events,
+            };
+            doubts(&facts, &judged, &shown, &setup)
+        }
+        _ => Doubts::default(),
     };
-    let flags = flags(&facts, &judged, &shown);
-    let stands = stands_in_the_way(&facts, &judged, &shown, role);
+    flags.extend(doubts.flags.iter().cloned());
+    sort_flags(&mut flags);
+    let denied = doubts.alternative.is_some_and(|alternative| alternative.denies);
+    let stands = stands_in_the_way(&facts, &judged, &shown, role, denied);
     let detects = facts.detects();
     let band = fitted.as_ref().map_or_else(
         |_| Vec::new(),
@@ -143,7 +158,7 @@ pub fn compute(series: &WellSeries, rules: &Rules<'_>, kind: Kind) -> Computed {
         ranks,
         judged,
         shown,
-        pace,
+        doubts,
         flags,
         detects,
         role,
@@ -166,17 +181,45 @@ fn until(fit: &Fit, projection: Option<&Projection>, shown: &Shown) -> Option<f6
     Some(years_between(fit.used.first, farthest).0 + PAST * fit.length().0)
 }
 
-/// Kendall's test and Theil–Sen; with non-detects both wait for their censored forms.
-fn ranks(points: &Points, confidence: f64) -> Option<(Kendall, Option<TheilSen>)> {
+/// Kendall's test and Theil–Sen; with non-detects over the pairs whose order is certain.
+fn ranks(points: &Points, confidence: f64) -> Option<(Kendall, Option<Sen>)> {
     /// Two values have one pair, which tests nothing.
     const FEWEST: usize = 3;
-    let all_measured = points.fitted().all(|value| value.is_measured());
     let slices = points.slices();
-    if !all_measured || slices.t.len() < FEWEST {
+    let detects = points.fitted().filter(|value| value.is_detect()).count();
+    if slices.t.len() < FEWEST || detects == 0 {
         return None;
     }
-    let test = mann_kendall(&slices.t, &slices.y)?;
+    if points.fitted().all(|value| value.is_measured()) {
+        let test = mann_kendall(&slices.t, &slices.y)?;
+        #[allow(clippy::cast_precision_loss)] // a count of pairs
+        let kendall = Kendall { s: test.s as f64, p: test.p };
+        let sen = theil_sen(&slices.t, &slices.y, confidence).map(|sen| Sen {
+            slope: sen.slope,
+            low: sen.interval.map(|interval| interval.low),
+            high: sen.interval.map(|interval| interval.high),
+        });
+        return Some((kendall, sen));
+    }
+    let numeric = NumericPoints::new(&slices.t, &slices.y, &slices.mark).ok()?;
+    let test = certain_pairs(numeric)?;
     #[allow(clippy::cast_precision_loss)] // a count of pairs
     let kendall = Kendall { s: test.s as f64, p: test.p };
-    Some((kendall, theil_sen(&slices.t, &slices.y, confidence)))
+    let sen = akritas_theil_sen(numeric, confidence).map(|sen| Sen {
+        slope: sen.slope,
+        low: sen.ends.low,
+        high: sen.ends.high,
+    });
+    Some((kendall, sen))
+}
+
+/// Theil and Sen's slope, per year, with the ends that exist.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Sen {
+    /// The slope of ln C, negative when falling.
+    pub slope: f64,
+    /// Its lower end.
+    pub low: Option<f64>,
+    /// Its upper end.
+    pub high: Option<f64>,
 }

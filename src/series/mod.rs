@@ -1,6 +1,6 @@
 //! Readings grouped by site, well, analyte, fraction and depth, merged to one value a date.
 //!
-//! [`points`] is the only way from a series to a fit: it applies the censoring point, the merge of
+//! [`points()`] is the only way from a series to a fit: it applies the censoring point, the merge of
 //! one date, the window and the substitution setting, and says what became of every record.
 
 pub mod key;
@@ -21,7 +21,7 @@ pub use completeness::{Completeness, completeness};
 pub use grouping::group;
 pub use key::SeriesKey;
 pub use pairs::DuplicatePair;
-pub use points::{DateValue, MergeRules, Points, Window, points};
+pub use points::{DateValue, LeaveOut, MergeRules, Points, Window, points};
 pub use quality::{Quality, quality};
 pub use round::{Round, RoundRules};
 pub use sentinels::{Sentinel, sentinels};

@@ -39,6 +39,21 @@ pub struct MergeRules {
     pub duplicates: Duplicates,
     /// What a non-detect contributes.
     pub non_detects: NonDetects,
+    /// What a rerun leaves out; nothing in the main fit.
+    pub leave_out: LeaveOut,
+}
+
+/// What a rerun leaves out of the fit, to see how much hangs on it.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum LeaveOut {
+    /// Nothing.
+    Nothing,
+    /// One date.
+    Date(NaiveDate),
+    /// The highest measured value of the window.
+    Highest,
+    /// Estimated results.
+    Estimated,
 }
 
 /// The value of one date.
@@ -191,6 +206,8 @@ pub fn points(series: &WellSeries, rules: &MergeRules) -> Points {
             }
         } else if let Some(place) = candidate.excluded_by {
             points.fates.push((candidate.record, Fate::Decision(place)));
+        } else if rules.leave_out == LeaveOut::Estimated && candidate.estimated {
+            // A rerun: its fates are nobody's.
         } else {
             known.push(candidate.clone());
         }
@@ -202,7 +219,8 @@ pub fn points(series: &WellSeries, rules: &MergeRules) -> Points {
     points.told.extend(limit_taken.iter().map(|record| (*record, Told::DetectionLimitTaken)));
     for day in known.chunk_by(|a, b| a.date == b.date) {
         let Some(merged) = merge_date(day, rules.same_day, rules.duplicates) else { continue };
-        let in_fit = rules.window.holds(day[0].date);
+        let in_fit =
+            rules.window.holds(day[0].date) && rules.leave_out != LeaveOut::Date(day[0].date);
         points.account(day, &merged, in_fit);
         let (reading, replaced) = substitute(merged.reading, rules.non_detects);
         points.substituted += usize::from(replaced);
@@ -215,6 +233,16 @@ pub fn points(series: &WellSeries, rules: &MergeRules) -> Points {
             substituted: replaced,
             records: merged.used,
         });
+    }
+    if rules.leave_out == LeaveOut::Highest {
+        let highest = points
+            .dates
+            .iter_mut()
+            .filter(|value| value.in_fit && value.is_measured())
+            .max_by(|a, b| a.reading.number().total_cmp(&b.reading.number()));
+        if let Some(highest) = highest {
+            highest.in_fit = false;
+        }
     }
     points
 }

@@ -204,7 +204,7 @@ impl FlagCode {
             | Self::BeyondHorizon
             | Self::BeyondCalendar
             | Self::HistoryChanged
-            | Self::DaughterAboveLimit => "this program's rule (explain it by its name)",
+            | Self::DaughterAboveLimit => "this program's rule",
         }
     }
 

@@ -10,8 +10,13 @@ pub mod reasons;
 pub mod flag;
 pub mod band;
 pub mod stage;
+pub mod doubt;
 
 pub use band::BandPoint;
+pub use doubt::{
+    Adjusted, Alternative, Answer, Choice, ChoiceKind, ChoiceSpan, Model, ModelFit, MoreRounds,
+    WhyNoModel,
+};
 pub use flag::{Figure, Flag, FlagCode, Standing};
 pub use name::{folded, nearest};
 pub use reading::{Concentration, Reading};

@@ -109,12 +109,14 @@ fn crossed(code: FlagCode, figure: f64, threshold: f64) -> String {
             format!("one date decides the answer (Cook's distance {f}, over {t})")
         }
         FlagCode::NotNormal => format!("the residuals are not normal ({p}, under {t})"),
-        FlagCode::Autocorrelated => format!("residuals follow one another ({p}, under {t})"),
+        FlagCode::Autocorrelated => {
+            format!("residuals follow one another (correlation {f} a year apart, p under {t})")
+        }
         FlagCode::Seasonal => {
             format!("residuals differ between the quarters of the year ({p}, under {t})")
         }
-        FlagCode::Slowing => format!("the fall slows down ({p}, under {t})"),
-        FlagCode::Quickening => format!("the fall speeds up ({p}, under {t})"),
+        FlagCode::Slowing => format!("the change slows down ({p}, under {t})"),
+        FlagCode::Quickening => format!("the change speeds up ({p}, under {t})"),
         FlagCode::TwoRates => {
             format!("two rates describe the data better than one (AICc lower by {f}, over {t})")
         }

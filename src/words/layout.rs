@@ -5,6 +5,8 @@
 
 /// A blank at which no line is broken.
 pub const HARD_SPACE: char = '\u{a0}';
+/// The same as a text, to hold words together.
+pub const HELD: &str = "\u{a0}";
 /// The widest line that is written, so that sentences stay readable on wide terminals.
 const WIDEST: usize = 100;
 /// The narrowest line that is wrapped to.

@@ -22,6 +22,7 @@ pub mod caution;
 pub mod round;
 pub mod progress;
 pub mod unreadable;
+pub mod doubt;
 pub mod series_sentence;
 pub mod explain;
 pub mod layout;

@@ -33,17 +33,18 @@ pub fn people(value: f64) -> String {
     shortest(value, PEOPLE_DIGITS)
 }
 
-/// An estimate beside the wider end of its interval: no digit finer than the third of that end, so
-/// that `0.0000249 (-0.00765 to 0.0077)` reads `0.00002`.
+/// An estimate beside its interval. Where the interval holds zero no digit is finer than the third of
+/// its wider end, so that `0.0000249 (-0.00765 to 0.0077)` reads `0.00002`.
 #[must_use]
-pub fn people_beside(value: f64, end: f64) -> String {
-    let coarser = value.is_finite() && end.is_finite() && value.abs() < end.abs();
+pub fn people_beside(value: f64, low: f64, high: f64) -> String {
+    let end = low.abs().max(high.abs());
+    let coarser = low < 0.0 && high > 0.0 && end.is_finite() && value.abs() < end;
     if !coarser {
         return people(value);
     }
     // The logarithm of a finite number lies between -324 and 309.
     #[allow(clippy::cast_possible_truncation)]
-    let decimals = PEOPLE_DIGITS as i32 - 1 - end.abs().log10().floor() as i32;
+    let decimals = PEOPLE_DIGITS as i32 - 1 - end.log10().floor() as i32;
     match usize::try_from(decimals) {
         Ok(decimals) => {
             let rounded = format!("{value:.decimals$}").parse::<f64>();
@@ -62,15 +63,13 @@ pub fn shortest(value: f64, digits: usize) -> String {
     if !value.is_finite() {
         return String::new();
     }
-    if value == 0.0 {
-        return "0".to_owned();
-    }
     // `{:e}` with a precision rounds the exact binary value once, correctly.
     let written = format!("{:.*e}", digits.saturating_sub(1), value.abs());
     let Some((mantissa, exponent)) = written.split_once('e') else { return written };
     let Ok(exponent) = exponent.parse::<i32>() else { return written };
     let mut digits: String = mantissa.chars().filter(char::is_ascii_digit).collect();
     digits.truncate(digits.trim_end_matches('0').len().max(1));
+    // −0 is not under 0, so it has no sign.
     let sign = if value < 0.0 { "-" } else { "" };
     format!("{sign}{}", placed(&digits, exponent))
 }

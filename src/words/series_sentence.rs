@@ -10,7 +10,13 @@ use crate::terms::{Pace, PerYear, Verdict, WhyNoDate};
 /// The sentence of a series at the two-sided confidence in force.
 #[must_use]
 pub fn series_sentence(series: &SeriesFinding, level: f64) -> String {
-    let parts = [trend(series, level), now(series), date(series), goal(series)];
+    // What denies a date is told before the date.
+    let denial = super::doubt::denial(series).map(|text| {
+        let mut letters = text.chars();
+        let first = letters.next().map(|letter| letter.to_uppercase().to_string());
+        format!("{}{}.", first.unwrap_or_default(), letters.as_str())
+    });
+    let parts = [trend(series, level), now(series), denial, date(series), goal(series)];
     parts.into_iter().flatten().collect::<Vec<_>>().join(" ")
 }
 
@@ -45,16 +51,15 @@ fn trend(series: &SeriesFinding, level: f64) -> Option<String> {
 #[must_use]
 pub fn rate(series: &SeriesFinding, level: f64) -> Option<String> {
     let rate = series.rate_per_year?;
-    let interval = match (series.rate_lower, series.rate_upper) {
-        (Some(low), Some(high)) => {
-            format!("{} interval {} to {}", confidence(level), people(low.0), people(high.0))
-        }
-        _ => "no interval could be given".to_owned(),
-    };
     let yearly = yearly(series, rate).map_or_else(String::new, |text| format!(", {text}"));
-    let ends = [series.rate_lower, series.rate_upper].into_iter().flatten();
-    let widest = ends.map(|end| end.0.abs()).fold(0.0, f64::max);
-    Some(format!("rate {} a year ({interval}){yearly}", people_beside(rate.0, widest)))
+    let (value, interval) = match (series.rate_lower, series.rate_upper) {
+        (Some(low), Some(high)) => {
+            let ends = format!("{} to {}", people(low.0), people(high.0));
+            (people_beside(rate.0, low.0, high.0), format!("{} interval {ends}", confidence(level)))
+        }
+        _ => (people(rate.0), "no interval could be given".to_owned()),
+    };
+    Some(format!("rate {value} a year ({interval}){yearly}"))
 }
 
 /// The change a year in percent, only where the interval shows which way it goes.
@@ -190,14 +195,28 @@ fn reach_text(series: &SeriesFinding, reach: NaiveDate) -> String {
 /// When a rising line crosses its limit, as a sentence.
 #[must_use]
 pub fn exceed(series: &SeriesFinding) -> Option<String> {
-    let crossing = month(series.exceed_date?);
+    let crosses = crosses(series)?;
+    Some(format!("If it goes on, the typical (median) level crosses the limit {crosses}."))
+}
+
+/// When a rising line crosses its limit: `about 2031-04 (2029-10 at the earliest)`.
+#[must_use]
+pub fn crosses(series: &SeriesFinding) -> Option<String> {
+    let crossing = series.exceed_date?;
+    let horizon = series.horizon;
+    let beyond = |date: NaiveDate| horizon.is_some_and(|horizon| date > horizon);
     let early = series.exceed_earliest.map_or_else(
         || "no early end could be given".to_owned(),
-        |early| format!("{} at the earliest", month(early)),
+        |early| match beyond(early) {
+            true => "beyond the horizon at the earliest".to_owned(),
+            false => format!("{} at the earliest", month(early)),
+        },
     );
-    Some(format!(
-        "If it goes on, the typical (median) level crosses the limit about {crossing} ({early})."
-    ))
+    Some(match (beyond(crossing), series.exceed_earliest.is_some_and(beyond)) {
+        (true, true) => "beyond the horizon".to_owned(),
+        (true, false) => format!("beyond the horizon ({early})"),
+        (false, _) => format!("about {} ({early})", month(crossing)),
+    })
 }
 
 /// The goal date, where there is a pace.

@@ -16,18 +16,18 @@ MW-1   | PCE            | attenuating | least-squares       |             |     
 MW-2   | cis-1,2-DCE    | below       | least-squares       |             |                     |
 MW-3   | Vinyl chloride | below       | count               | detects     | below               | few-detects;date-withheld;mostly-non-detects
 MW-4   | Chromium       | below       | least-squares       |             | below               |
-MW-5   | Chromium       | flat        | least-squares       |             | interval-holds-zero | unbounded
-MW-6   | TCE            | attenuating | least-squares       |             | results-deny-line   | results-deny-line
+MW-5   | Chromium       | flat        | least-squares       |             | interval-holds-zero | seasonal;unbounded
+MW-6   | TCE            | attenuating | least-squares       |             | results-deny-line   | results-deny-line;autocorrelated;slowing;two-rates;levels-off
 MW-7   | TCE            | attenuating | least-squares       |             |                     | far-extrapolation
-MW-7   | Vinyl chloride | rising      | least-squares       |             | rising              |
+MW-7   | Vinyl chloride | rising      | least-squares       |             | rising              | autocorrelated;slowing;two-rates
 MW-8   | PCE            | attenuating | least-squares       |             |                     | short-record;far-extrapolation
 MW-9   | PCE            | too-few     |                     | dates       | no-rate             | few-dates;few-detects;short-record;date-withheld
 MW-10  | Chloride       | undecided   | least-squares       |             | not-located         | short-record;duplicates-differ;not-located
 MW-11  | TCE            | attenuating | censored-likelihood |             |                     | short-record;reporting-limit-above-limit
 MW-12  | PCE            | attenuating | least-squares       |             |                     | stale
-MW-13  | TCE            | undecided   | least-squares       |             | interval-holds-zero | short-record;unit-slip;wide-scatter;outlier;tests-disagree;unbounded
+MW-13  | TCE            | undecided   | least-squares       |             | interval-holds-zero | short-record;unit-slip;wide-scatter;outlier;not-normal;tests-disagree;unbounded
 MW-14  | Vinyl chloride | below       | censored-likelihood |             |                     | uninformative-non-detects;estimated-recensored
-PZ-4/A | PCE            | below       | censored-likelihood |             | below               | short-record
+PZ-4/A | PCE            | below       | censored-likelihood |             | below               | short-record;quickening
 PZ-4_A | PCE            | undetected  |                     | detects     | no-rate             | few-detects;short-record;date-withheld;mostly-non-detects
 =1+1   | PCE            | too-few     |                     | detects     | no-rate             | few-dates;few-detects;short-record;date-withheld;mostly-non-detects
 BG-1   | PCE            | undetected  |                     | detects     | no-rate             | few-detects;date-withheld;mostly-non-detects;falling-reporting-limits

@@ -3,6 +3,7 @@
 
 mod arrival;
 mod cli;
+mod deliver;
 mod demo;
 mod fuzz;
 mod intake;
@@ -10,3 +11,4 @@ mod numerics;
 mod real;
 mod site;
 mod structure;
+mod words;

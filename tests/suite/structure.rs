@@ -33,8 +33,8 @@ const PLACES: [(&str, &[&str]); 22] = [
     (
         "chrono",
         &[
-            "terms", "site", "ledger", "intake", "series", "fit", "project", "judge", "findings",
-            "words", "deliver", "run", "cli",
+            "terms", "site", "ledger", "intake", "series", "fit", "project", "judge", "doubts",
+            "findings", "words", "deliver", "run", "cli",
         ],
     ),
     ("clap", &["cli", "main"]),

@@ -9,6 +9,8 @@ use crate::terms::{Reading, Span};
 
 /// How far the fitted line may stretch the concentration axis beyond readings and limit.
 const LINE_STRETCH: f64 = 10.0;
+/// How far its band may, over the record.
+const BAND_STRETCH: f64 = 4.0;
 
 /// The plot's rectangle and what its edges mean.
 #[derive(Clone, Debug)]
@@ -83,12 +85,15 @@ fn levels(series: &SeriesFinding, dates: Span) -> Vec<f64> {
     }));
     levels.extend(series.limit);
     let positive = || levels.iter().copied().filter(|level| *level > 0.0);
-    let least = positive().fold(f64::INFINITY, f64::min) / LINE_STRETCH;
-    let most = positive().fold(0.0, f64::max) * LINE_STRETCH;
-    let line = series.fitted.iter().flat_map(|fitted| &fitted.band);
-    let shown = line.filter(|point| (dates.first..=dates.last).contains(&point.date));
-    let line: Vec<f64> = shown.map(|p| p.median).filter(|m| (least..=most).contains(m)).collect();
-    levels.extend(line);
+    let least = positive().fold(f64::INFINITY, f64::min);
+    let most = positive().fold(0.0, f64::max);
+    let Some(fitted) = &series.fitted else { return levels };
+    let shown = fitted.band.iter().filter(|p| (dates.first..=dates.last).contains(&p.date));
+    let within = least / LINE_STRETCH..=most * LINE_STRETCH;
+    levels.extend(shown.map(|point| point.median).filter(|median| within.contains(median)));
+    let over_record = fitted.band.iter().filter(|point| point.date <= fitted.used.last);
+    let (low, high) = (least / BAND_STRETCH, most * BAND_STRETCH);
+    levels.extend(over_record.flat_map(|p| [p.low.max(low), p.high.min(high)]));
     levels
 }
 

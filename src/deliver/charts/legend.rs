@@ -39,7 +39,8 @@ pub type Entry = (Glyph, String);
 #[must_use]
 pub fn entries(series: &SeriesFinding, shown: Option<Span>, level: f64) -> Vec<Entry> {
     let plain = Variant { estimated: false, in_fit: true };
-    let occurs = |mark: Mark| series.values.iter().any(|value| Mark::of(value.reading) == mark);
+    let fitted = || series.values.iter().filter(|value| value.in_fit);
+    let occurs = |mark: Mark| fitted().any(|value| Mark::of(value.reading) == mark);
     let mut entries = Vec::new();
     for (mark, words) in [
         (Mark::Measured, "measured"),

@@ -33,7 +33,8 @@ pub fn range(series: &SeriesFinding) -> Option<Span> {
     let first = series.values.first()?.date;
     let last = series.values.last()?.date;
     let record = last.signed_duration_since(first).num_days().unsigned_abs().max(SHORTEST_RECORD);
-    let cap = last.checked_add_days(Days::new(MOST_AHEAD * record)).unwrap_or(NaiveDate::MAX);
+    // Dates have four-digit years and the calendar six, so three records fit behind any of them.
+    let cap = last + Days::new(MOST_AHEAD * record);
     let date = series.reach_date.or(series.exceed_date);
     let early = series.reach_earliest.or(series.exceed_earliest).or(date).or(series.reach_latest);
     let late = series.reach_latest.or(date).or(early);

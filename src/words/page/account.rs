@@ -4,7 +4,7 @@ use crate::findings::{Note, OutcomeCount, RunFacts};
 use crate::ledger::Outcome;
 use crate::words::clean::shown;
 use crate::words::fate;
-use crate::words::layout::{Align, HARD_SPACE, Lines};
+use crate::words::layout::{Align, HELD, Lines};
 use crate::words::number::{count, counted};
 use crate::words::told;
 
@@ -16,7 +16,7 @@ pub fn read(lines: &mut Lines, run: &RunFacts) {
         .map(|&outcome| (outcome, total(run, outcome)))
         .filter(|(_, records)| *records > 0)
         .map(|(outcome, records)| {
-            format!("{}{HARD_SPACE}{}", count(records), fate::outcome(outcome))
+            format!("{} {}", count(records), fate::outcome(outcome)).replace(' ', HELD)
         })
         .collect();
     let files = counted(run.files.len(), "file", "files");

@@ -5,7 +5,7 @@ use crate::terms::{Pace, Standing, Verdict, WhyNoDate};
 use crate::words::layout::{HARD_SPACE, Lines};
 use crate::words::number::{counted, month, table};
 use crate::words::page::series_name;
-use crate::words::{flag, reason, series_sentence};
+use crate::words::{doubt, flag, reason, series_sentence};
 
 /// Series shown of each group; the others are counted.
 const SHOWN: usize = 4;
@@ -16,12 +16,16 @@ struct Group<'a> {
     series: Vec<&'a SeriesFinding>,
 }
 
-/// The series that matter first, each in the first group that takes it: rising (by adjusted p),
-/// over the limit without a date (by how far over), behind the goal (by date, the latest first).
-fn groups(findings: &Findings) -> [Group<'_>; 3] {
-    let (mut rising, mut over, mut behind) = (Vec::new(), Vec::new(), Vec::new());
+/// The series that matter first, each in the first group that takes it: a date that a better model
+/// denies (by level), rising (by adjusted p), over the limit without a date (by how far over),
+/// behind the goal (by date, the latest first).
+fn groups(findings: &Findings) -> [Group<'_>; 4] {
+    let (mut denied, mut rising) = (Vec::new(), Vec::new());
+    let (mut over, mut behind) = (Vec::new(), Vec::new());
     for series in &findings.series {
-        if series.verdict == Verdict::Rising {
+        if series.alternative_denies && series.reach_date.is_some() {
+            denied.push(series);
+        } else if series.verdict == Verdict::Rising {
             rising.push(series);
         } else if is_over_without_date(series) {
             over.push(series);
@@ -31,9 +35,11 @@ fn groups(findings: &Findings) -> [Group<'_>; 3] {
     }
     // A series without the figure comes after those with it; ties keep the order of the tables.
     rising.sort_by(|a, b| by(a.slope_p_adjusted.or(a.slope_p), b.slope_p_adjusted.or(b.slope_p)));
+    denied.sort_by(|a, b| by(times_limit(b), times_limit(a)));
     over.sort_by(|a, b| by(times_limit(b), times_limit(a)));
     behind.sort_by_key(|series| std::cmp::Reverse(series.reach_date));
     [
+        Group { title: "The line promises a date that a better model denies", series: denied },
         Group { title: "Rising", series: rising },
         Group { title: "Over the limit, and no date can be supported", series: over },
         Group { title: "Behind the goal date", series: behind },
@@ -47,17 +53,18 @@ fn by(a: Option<f64>, b: Option<f64>) -> std::cmp::Ordering {
     }
 }
 
-/// Whether the level, or without one the last result, is over the limit and there is no date.
+/// Whether the level or the last result is over the limit and there is no date.
 #[must_use]
 pub fn is_over_without_date(series: &SeriesFinding) -> bool {
     series.reach_date.is_none() && times_limit(series).is_some_and(|times| times > 1.0)
 }
 
-/// The level, or without one the last detect, as a multiple of the limit.
+/// The level or the last detect, whichever is higher, as a multiple of the limit.
 fn times_limit(series: &SeriesFinding) -> Option<f64> {
     let limit = series.limit?;
     let detect = series.last_result.filter(|r| r.is_detect()).map(|r| r.number());
-    Some(series.level_now.or(detect)? / limit)
+    let higher = [series.level_now, detect].into_iter().flatten().max_by(f64::total_cmp)?;
+    Some(higher / limit)
 }
 
 /// The series that heads the page, for the next command.
@@ -98,6 +105,9 @@ fn entry(lines: &mut Lines, findings: &Findings, series: &SeriesFinding) {
     if let Some(date) = date(series) {
         lines.hanging(&date, 4, 6);
     }
+    if let Some(denial) = doubt::denial(series) {
+        lines.hanging(&denial, 4, 6);
+    }
     let doubts: Vec<&str> = series
         .flags
         .iter()
@@ -107,6 +117,13 @@ fn entry(lines: &mut Lines, findings: &Findings, series: &SeriesFinding) {
     // Without a rate there is nothing to doubt: the reason is said above.
     if !doubts.is_empty() && series.rate_per_year.is_some() {
         lines.hanging(&format!("doubts: {}", doubts.join(", ")), 4, 6);
+    }
+    let telling = series.most_telling.filter(|choice| {
+        choice.answer.verdict != series.verdict || choice.answer.reach != series.reach_date
+    });
+    if let Some(choice) = telling {
+        let text = doubt::most_telling(&choice, series.verdict);
+        lines.hanging(&format!("most telling: {text}"), 4, 6);
     }
 }
 
@@ -133,12 +150,8 @@ fn date(series: &SeriesFinding) -> Option<String> {
         let meets = series_sentence::meets(series);
         return Some(format!("typical (median) level {meets} the limit {reach}{goal}"));
     }
-    if let (Some(cross), Some(early)) = (series.exceed_date, series.exceed_earliest) {
-        return Some(format!(
-            "typical (median) level crosses the limit about {} ({} at the earliest)",
-            month(cross),
-            month(early)
-        ));
+    if let Some(crosses) = series_sentence::crosses(series) {
+        return Some(format!("typical (median) level crosses the limit {crosses}"));
     }
     let why = series.why_no_date?;
     // That it rises is the heading already, and that there is no rate the line before.

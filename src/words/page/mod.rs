@@ -12,6 +12,7 @@ pub mod to_do;
 pub mod read_as;
 pub mod show;
 pub mod show_values;
+pub mod show_doubts;
 pub mod begun;
 pub mod explained;
 

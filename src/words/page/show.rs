@@ -1,6 +1,6 @@
 //! The page of one series in full: what it says, its figures, its flags, its records.
 
-use super::{PageOptions, heading, series_name, show_values};
+use super::{PageOptions, heading, series_name, show_doubts, show_values};
 use crate::findings::{Findings, SeriesFinding};
 use crate::terms::Standing;
 use crate::words::caution::caution;
@@ -22,6 +22,7 @@ pub fn show(findings: &Findings, series: &SeriesFinding, options: &PageOptions<'
     lines.heading("Figures");
     lines.rows(&figures(series, findings.run.confidence), &[Align::Left, Align::Left], 2);
     flags(&mut lines, series);
+    show_doubts::doubts(&mut lines, series);
     show_values::values(&mut lines, series);
     show_values::duplicates(&mut lines, series);
     records(&mut lines, series);
@@ -37,7 +38,7 @@ fn ranged(value: Option<f64>, low: Option<f64>, high: Option<f64>) -> Option<Str
     let value = value?;
     Some(match (low, high) {
         (Some(low), Some(high)) => {
-            let value = people_beside(value, low.abs().max(high.abs()));
+            let value = people_beside(value, low, high);
             format!("{value} ({} to {})", people(low), people(high))
         }
         (Some(low), None) => format!("{} ({} at least, no upper end)", people(value), people(low)),
@@ -46,11 +47,21 @@ fn ranged(value: Option<f64>, low: Option<f64>, high: Option<f64>) -> Option<Str
     })
 }
 
+/// The half-life with its ends, or why it has none.
+fn half_life(series: &SeriesFinding) -> Option<String> {
+    let (half, low, high) = series.half_life_years();
+    match (half, series.rate_lower) {
+        (Some(half), Some(rate)) if rate.0 <= 0.0 => {
+            Some(format!("{} (no interval, since the rate's holds zero)", people(half)))
+        }
+        _ => ranged(half, low, high),
+    }
+}
+
 /// Every figure that the series has, one a line.
 fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
     let unit = series.unit.label();
     let in_unit = |text: String| format!("{text} {unit}");
-    let (half, half_low, half_high) = series.half_life_years();
     let rate = |r: Option<crate::terms::PerYear>| r.map(|rate| rate.0);
     let span = series.sampled.map(|s| format!("{} to {}", iso(s.first), iso(s.last)));
     let limit = series.limit.map(|l| {
@@ -76,7 +87,7 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
             "rate a year",
             ranged(rate(series.rate_per_year), rate(series.rate_lower), rate(series.rate_upper)),
         ),
-        ("half-life, years", ranged(half, half_low, half_high)),
+        ("half-life, years", half_life(series)),
         (
             "Theil-Sen rate a year",
             ranged(series.sen_rate_per_year, series.sen_rate_lower, series.sen_rate_upper),
@@ -95,12 +106,12 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
             "single samples over the limit now",
             series
                 .share_over_limit_now
-                .map(|s| format!("about {} by the line and its scatter", percent(s))),
+                .map(|s| format!("{} by the line and its scatter", share(s))),
         ),
         ("scatter of ln C", series.residual_sd_ln.map(people)),
         ("R squared", series.r_squared.map(people)),
-        ("no slope", series.slope_p.map(p_value)),
-        ("no slope, adjusted", series.slope_p_adjusted.map(p_value)),
+        ("test of no slope", series.slope_p.map(p_value)),
+        ("the same, adjusted for all series", series.slope_p_adjusted.map(p_value)),
         (
             "Kendall's S",
             series.kendall_s.map(|s| {
@@ -114,16 +125,7 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
             series.reach_date_mean.map(|d| format!("about {} (no interval is computed)", month(d))),
         ),
         ("limit not met", series_sentence::not_before(series)),
-        (
-            "limit crossed",
-            series.exceed_date.map(|d| {
-                let early = series.exceed_earliest.map_or_else(
-                    || "no early end".to_owned(),
-                    |e| format!("{} at the earliest", month(e)),
-                );
-                format!("about {} ({early})", month(d))
-            }),
-        ),
+        ("limit crossed", series_sentence::crosses(series)),
         (
             "required rate a year",
             series
@@ -142,6 +144,18 @@ fn figures(series: &SeriesFinding, level: f64) -> Vec<Vec<String>> {
     rows.into_iter()
         .filter_map(|(name, text)| text.map(|text| vec![name.to_owned(), text]))
         .collect()
+}
+
+/// A share for people: never more exact than it is known.
+fn share(share: f64) -> String {
+    const SMALL: f64 = 0.001;
+    if share < SMALL {
+        "under 0.1 %".to_owned()
+    } else if share > 1.0 - SMALL {
+        "over 99.9 %".to_owned()
+    } else {
+        format!("about {}", percent(share))
+    }
 }
 
 /// Each flag with its figure, threshold and source; tests that could not be made after them.

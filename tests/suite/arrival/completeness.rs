@@ -62,7 +62,8 @@ fn a_sample_a_few_days_past_the_edge_counts_for_the_round_it_belongs_to() {
                  W-1,PCE,2024-07-02,4,ug/L\nW-1,PCE,2024-09-05,4,ug/L\nW-2,PCE,2024-05-05,4,ug/L\n";
     let expected = "[[expected]]\nwells = [\"W-1\"]\nanalytes = [\"PCE\"]\nevery = 3\n";
     let rounds = check_table(table, &site(expected)).arrival.completeness.rounds;
-    let held: Vec<(usize, usize)> = rounds.iter().map(|round| (round.due, round.received)).collect();
+    let held: Vec<(usize, usize)> =
+        rounds.iter().map(|round| (round.due, round.received)).collect();
     assert_eq!(held, [(1, 1); 3]);
 }
 

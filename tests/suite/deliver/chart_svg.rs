@@ -83,8 +83,9 @@ fn hostile_names_are_text_and_nothing_else() {
 }
 
 #[test]
-fn shapes_tell_readings_apart_without_colour() {
-    let only = |reading: Reading, estimated: bool, in_fit: bool| {
+fn each_kind_of_reading_has_a_shape_of_its_own_at_every_date_and_in_the_legend() {
+    // How often each shape occurs: disc, hollow disc, hollow triangle, bar, ring, light cross.
+    let shapes = |reading: Reading, estimated: bool, in_fit: bool| {
         let dates = sample::quarters("2020-01-01", 2);
         let readings: Vec<_> = dates.iter().map(|date| (*date, reading)).collect();
         let mut series = sample::with(sample::empty("a", "b"), &readings);
@@ -92,32 +93,34 @@ fn shapes_tell_readings_apart_without_colour() {
             (value.estimated, value.in_fit) = (estimated, in_fit);
         }
         let svg = chart(&series);
-        // Everything but the words, without its colours.
-        let shapes = svg.lines().filter(|line| line.starts_with('<') && !line.starts_with("<text"));
-        let bare = |line: &str| {
-            let cut = |line: &str, key: &str| match line.split_once(key) {
-                Some((head, tail)) => format!("{head}{}", tail.split_once('"').map_or("", |t| t.1)),
-                None => line.to_owned(),
-            };
-            let hollow = line.contains("fill=\"none\"");
-            format!("{}{hollow}", cut(&cut(line, "fill=\""), "stroke=\""))
-        };
-        shapes.skip(3).map(bare).collect::<Vec<_>>().join("\n")
+        [
+            "r=\"9\" opacity=\"1\" fill=\"#000000\"",
+            "r=\"9\" opacity=\"1\" fill=\"none\" stroke=\"#000000\"",
+            "<polygon opacity=\"1\" fill=\"#FFFFFF\"",
+            "<polyline fill=\"none\" opacity=\"1\" stroke=\"#000000\" stroke-width=\"3\"",
+            "r=\"16\"",
+            "stroke=\"#767676\" stroke-width=\"3\"",
+        ]
+        .map(|shape| svg.matches(shape).count())
     };
-    let all = [
-        only(Reading::Measured(3.0), false, true),
-        only(Reading::Below(3.0), false, true),
-        only(Reading::Above(3.0), false, true),
-        only(Reading::Between(2.5, 3.0), false, true),
-        only(Reading::Measured(3.0), true, true),
-        only(Reading::Measured(3.0), false, false),
-        only(Reading::Below(3.0), false, false),
-    ];
-    for (at, one) in all.iter().enumerate() {
-        for other in &all[at + 1..] {
-            assert_ne!(one, other);
-        }
-    }
+    // The axes are one line of the width of a bar; a legend entry adds one of its kind.
+    assert_eq!(shapes(Reading::Measured(3.0), false, true), [3, 0, 0, 1, 0, 0]);
+    assert_eq!(shapes(Reading::Below(3.0), false, true), [0, 3, 0, 1, 0, 0]);
+    assert_eq!(shapes(Reading::Above(3.0), false, true), [0, 0, 3, 4, 0, 0]);
+    assert_eq!(shapes(Reading::Between(2.5, 3.0), false, true), [0, 0, 0, 10, 0, 0]);
+    assert_eq!(shapes(Reading::Measured(3.0), true, true), [4, 0, 0, 1, 3, 0]);
+    let [disc, .., cross] = shapes(Reading::Measured(3.0), false, false);
+    assert_eq!((disc, cross), (0, 6), "crosses alone");
+}
+
+#[test]
+fn a_long_name_is_cut_in_the_headline_and_whole_in_the_title() {
+    let mut series = sample::decline();
+    series.key.well = "x".repeat(300);
+    let svg = chart(&series);
+    let longest = svg.lines().filter(|l| l.starts_with("xx")).map(|l| l.chars().count()).max();
+    assert_eq!(longest, Some(80));
+    assert!(svg.contains(&format!("<title>{}, Benzene</title>", series.key.well)));
 }
 
 #[test]

@@ -149,4 +149,7 @@ fn a_link_to_a_folder_stays_a_link_and_files_are_readable_as_the_system_grants()
     fs::create_dir(&folder).expect("a folder");
     put(&here.path().join("fresh"), false, "x").expect("written");
     assert_eq!(mode(&here.path().join("fresh")), mode(&folder));
+    fs::set_permissions(&real, fs::Permissions::from_mode(0o710)).expect("rights");
+    put(&link, false, "two").expect("replaced");
+    assert_eq!(mode(&real), 0o710, "a folder's rights are its owner's choice");
 }

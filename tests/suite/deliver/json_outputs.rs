@@ -120,7 +120,8 @@ fn run_json_lists_inputs_settings_decisions_and_outputs() {
 fn pages_have_a_json_form() {
     let Findings { run, site, notes, arrival, series, wells } = sample::findings();
     let row = LedgerRow { reported: "O.5".into(), outcome: "set-aside", ..LedgerRow::default() };
-    let facts = CheckFacts { run: &run, site: &site, notes: &notes, arrival: &arrival, examples: &[row] };
+    let facts =
+        CheckFacts { run: &run, site: &site, notes: &notes, arrival: &arrival, examples: &[row] };
     let check = read(&check_json(&facts));
     assert_eq!(check["examples"][0]["reported"], "O.5");
     assert_eq!(check["records"][0]["outcome"], "used");

@@ -1,6 +1,7 @@
 //! Tables, charts, JSON, file names and the output folder.
 
 pub mod sample;
+mod sample_run;
 
 mod csv_text;
 mod csv_tables;

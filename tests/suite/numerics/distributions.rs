@@ -21,11 +21,11 @@ fn tails_and_quantiles_agree_with_forty_digit_values() {
             "bend" => (lower_tail(x).bend, 1e-12),
             "normal_quantile" => (tails::normal_quantile(x), 2e-15),
             "student_upper" => (tails::student_upper(x, degrees()), 2e-12),
-            // Over 1,000 degrees an expansion, which is good to 11 digits at a tail of 1e-10.
-            "student_quantile" => (
-                tails::student_quantile(x, degrees()),
-                if degrees() > 1_000.0 { 2e-11 } else { 3e-12 },
-            ),
+            // Over 1,000 degrees an expansion, which loses a little far out only.
+            "student_quantile" => {
+                let far_out = degrees() > 1_000.0 && x < 1e-8;
+                (tails::student_quantile(x, degrees()), if far_out { 2e-11 } else { 1e-12 })
+            }
             "chi_squared_upper" => (tails::chi_squared_upper(x, degrees()), 1e-12),
             "fisher_upper_2" => (tails::fisher_upper(x, 2.0, degrees()), 1e-12),
             other => panic!("no such row: {other}"),
@@ -38,7 +38,7 @@ fn tails_and_quantiles_agree_with_forty_digit_values() {
 /// Source: symmetry of Student's t, and the limits stated in the documentation.
 #[test]
 fn quantiles_end_for_every_tail_and_every_number_of_degrees() {
-    for degrees in [0.5, 1.0, 1.5, 3.0, 999.5, 1000.5, 3e7, 1e12, f64::INFINITY] {
+    for degrees in [0.1, 0.5, 1.0, 1.5, 3.0, 999.5, 1000.5, 3e7, 1e12, f64::INFINITY] {
         for tail in [0.0, 1e-300, 1e-12, 0.05, 0.5, 0.95, 1.0] {
             let t = tails::student_quantile(tail, degrees);
             assert!(t.is_finite(), "{tail} {degrees}: {t}");

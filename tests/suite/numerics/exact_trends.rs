@@ -48,18 +48,23 @@ fn w13_exact_tails() {
     }
 }
 
-/// Source: property 12 of the methods note: the distribution sums to 1 and is symmetric.
+/// Source: property 12 of the methods note, by way of what is known without the distribution: with
+/// an odd number of pairs S is never 0, so that half of it lies over 0; and the mean of S² is
+/// n(n − 1)(2n + 5)/18 (Kendall 1975 [from memory]).
 #[test]
-fn the_exact_distribution_is_symmetric_and_sums_to_one() {
-    for n in 0..=40 {
-        let pairs = (n as i64) * (n as i64 - 1).max(0) / 2;
-        assert_eq!(untied_at_least(n, -pairs), Some(1.0));
-        assert_eq!(untied_at_least(n, pairs + 1), Some(0.0));
-        for s in 0..=pairs {
-            let upper = untied_at_least(n, s).expect("n is up to 40");
-            let lower = 1.0 - untied_at_least(n, 1 - s).expect("n is up to 40");
-            assert_relative_eq!(upper, lower, max_relative = 1e-9, epsilon = 1e-15);
+fn the_exact_tails_give_one_half_and_the_known_variance() {
+    for n in 2..=40 {
+        let pairs = n * (n - 1) / 2;
+        let tail = |s: usize| untied_at_least(n, s as i64).expect("n is up to 40");
+        if pairs % 2 == 1 {
+            assert_relative_eq!(tail(1), 0.5, max_relative = 1e-12);
         }
+        // The mean of S² is the sum of (2s − 1)·P(|S| ≥ s).
+        let mean_square: f64 = (1..=pairs).map(|s| 2.0 * (2 * s - 1) as f64 * tail(s)).sum();
+        let variance = (n * (n - 1) * (2 * n + 5)) as f64 / 18.0;
+        assert_relative_eq!(mean_square, variance, max_relative = 1e-12);
+        assert_eq!(untied_at_least(n, -(pairs as i64)), Some(1.0));
+        assert_eq!(untied_at_least(n, pairs as i64 + 1), Some(0.0));
     }
     assert_eq!(untied_at_least(41, 5), None);
 }

@@ -130,7 +130,7 @@ proptest! {
         let mut random = Random(seed);
         let series = random.series(share);
         if let Ok(before) = series.fit() && before.kind == Kind::CensoredLikelihood {
-            let mut with = series.clone();
+            let mut with = series;
             with.t.push(place.rem_euclid(30.0));
             with.y.push(600.0);
             with.mark.push(Mark::Below);

@@ -189,9 +189,7 @@ fn w06_months_differ_once_the_trend_is_taken_out() {
 /// Source: W07, UG Example 14-4, arsenic by calendar quarter; R 4.2.2.
 #[test]
 fn w07_quarters_do_not_differ() {
-    let ppb = [
-        4.0, 7.2, 3.1, 3.5, 4.4, 5.1, 2.2, 6.3, 6.5, 7.5, 5.8, 5.9, 5.7, 4.1, 3.8, 4.3,
-    ];
+    let ppb = [4.0, 7.2, 3.1, 3.5, 4.4, 5.1, 2.2, 6.3, 6.5, 7.5, 5.8, 5.9, 5.7, 4.1, 3.8, 4.3];
     let quarter: Vec<usize> = (0..16).map(|i| i % 4).collect();
     let test = kruskal_wallis(&ppb, &quarter).expect("four quarters");
     printed(test.h, 4.522058824, 9);
@@ -202,9 +200,8 @@ fn w07_quarters_do_not_differ() {
 #[test]
 fn w12_wells_differ_with_many_ties() {
     let background = [5.0, 7.5, 5.0, 5.0, 6.4, 5.0, 5.0, 5.0, 5.0, 5.0];
-    let rest = [
-        5.0, 12.5, 8.0, 5.0, 11.2, 5.0, 13.7, 15.3, 20.2, 25.1, 5.0, 20.1, 35.0, 28.2, 19.0,
-    ];
+    let rest =
+        [5.0, 12.5, 8.0, 5.0, 11.2, 5.0, 13.7, 15.3, 20.2, 25.1, 5.0, 20.1, 35.0, 28.2, 19.0];
     let values = [&background[..], &rest[..]].concat();
     let well: Vec<usize> = (0..25).map(|i| if i < 10 { 9 } else { (i - 10) / 5 }).collect();
     let test = kruskal_wallis(&values, &well).expect("four wells");
@@ -220,7 +217,8 @@ fn kruskal_and_wallis_agree_with_the_textbook_form() {
     for _ in 0..200 {
         let n = random.whole(4, 60);
         let values: Vec<f64> = (0..n).map(|_| random.whole(0, 12) as f64).collect();
-        let groups: Vec<usize> = (0..n).map(|i| if i < 2 { i } else { random.whole(0, 4) }).collect();
+        let groups: Vec<usize> =
+            (0..n).map(|i| if i < 2 { i } else { random.whole(0, 4) }).collect();
         let Some(test) = kruskal_wallis(&values, &groups) else { continue };
         let ranks = mid_ranks(&values);
         let n = n as f64;

@@ -124,11 +124,11 @@ proptest! {
 #[test]
 fn an_estimate_is_written_no_finer_than_its_interval() {
     use ebbwell::words::number::people_beside;
-    assert_eq!(people_beside(0.000_024_9, 0.007_7), "0.00002");
-    assert_eq!(people_beside(-0.000_000_1, 0.007_7), "0");
-    assert_eq!(people_beside(0.278_4, 0.305), "0.278");
-    assert_eq!(people_beside(12.34, 0.1), "12.3");
-    assert_eq!(people_beside(0.5, 4000.0), "0.5");
-    assert_eq!(people_beside(f64::NAN, 1.0), "");
-    assert_eq!(people_beside(0.25, f64::INFINITY), "0.25");
+    assert_eq!(people_beside(0.000_024_9, -0.007_65, 0.007_7), "0.00002");
+    assert_eq!(people_beside(-0.000_000_1, -0.007_65, 0.007_7), "0");
+    assert_eq!(people_beside(0.278_4, 0.251, 0.305), "0.278");
+    assert_eq!(people_beside(17.34, 2.87, 104.0), "17.3", "one that does not hold zero");
+    assert_eq!(people_beside(0.5, -1.0, 4000.0), "0.5");
+    assert_eq!(people_beside(f64::NAN, -1.0, 1.0), "");
+    assert_eq!(people_beside(0.25, -1.0, f64::INFINITY), "0.25");
 }

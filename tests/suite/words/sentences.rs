@@ -108,6 +108,8 @@ fn no_sentence_holds_a_gap_or_a_number_that_is_none() {
             series.verdict = verdict;
             series.pace = Some(pace);
             series.reach_latest = None;
+            all.push(series.clone());
+            series.reach_earliest = None;
             all.push(series);
         }
     }
@@ -232,6 +234,9 @@ fn one_of_each() -> Vec<Told> {
         Told::Converted { from: "mg/L", to: "ug/L" },
         Told::Decision { id: x() },
         Told::Unreadable { column: "result", found: x(), expected: Expected::Result },
+        Told::FileLeftAlone { file: x() },
+        Told::FileWithoutRecords { file: x() },
+        Told::SettingOffDefault { key: x(), is: x() },
     ]
 }
 
