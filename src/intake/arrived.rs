@@ -1,7 +1,7 @@
 //! The records as they arrived, for whoever looks at them before any fit.
 
 use chrono::NaiveDate;
-use polars::prelude::UInt32Chunked;
+use polars::prelude::{Int32Chunked, UInt32Chunked};
 
 use super::Tidy;
 use super::frame::{ABOVE, BELOW, FrameError, MEASURED, NO_UNIT};
@@ -43,6 +43,7 @@ pub struct Arrived {
 pub struct Places<'a> {
     files: &'a UInt32Chunked,
     batches: &'a UInt32Chunked,
+    days: &'a Int32Chunked,
 }
 
 impl Places<'_> {
@@ -57,6 +58,12 @@ impl Places<'_> {
     pub fn batch(&self, record: RecordId) -> Code {
         self.batches.get(record as usize).unwrap_or_default()
     }
+
+    /// The date of a record.
+    #[must_use]
+    pub fn date(&self, record: RecordId) -> Option<NaiveDate> {
+        self.days.get(record as usize).and_then(date_of)
+    }
 }
 
 impl Tidy {
@@ -66,7 +73,8 @@ impl Tidy {
     /// [`FrameError`], which would be a fault of this program.
     pub fn places(&self) -> Result<Places<'_>, FrameError> {
         let code = |name: &str| self.frame.column(name)?.u32();
-        Ok(Places { files: code("file")?, batches: code("batch")? })
+        let days = self.frame.column("day")?.i32()?;
+        Ok(Places { files: code("file")?, batches: code("batch")?, days })
     }
 
     /// The text of a code, as an owned name.

@@ -8,7 +8,7 @@ use chrono::NaiveDate;
 use super::pairs::Agreement;
 use super::{DuplicatePair, WellSeries};
 use crate::intake::texts::Code;
-use crate::intake::{FrameError, Tidy};
+use crate::intake::{Arrived, FrameError, Tidy};
 use crate::ledger::{Fate, NonResult, QualityControl, RecordId, SetAside, Told};
 use crate::site::Site;
 use crate::terms::{Reading, Unit};
@@ -162,7 +162,6 @@ pub fn quality(
             _ => {}
         }
     }
-    let mut detects: BTreeMap<Batch, Vec<RecordId>> = BTreeMap::new();
     let mut batches: BTreeMap<u32, std::collections::BTreeSet<(Code, Option<NaiveDate>)>> =
         BTreeMap::new();
     for record in tidy.arrived()? {
@@ -197,15 +196,11 @@ pub fn quality(
                     _ => quality.blanks.unread += 1,
                 }
             }
-            Fate::Candidate if matches!(record.reading, Some(Reading::Measured(_))) => {
-                let batch = (record.file, record.batch, date, record.analyte);
-                detects.entry(batch).or_default().push(record.record);
-            }
             _ => {}
         }
     }
     if !quality.blanks.detects.is_empty() {
-        hold_against_batches(&mut quality.blanks.detects, tidy, &detects)?;
+        hold_against_batches(&mut quality.blanks.detects, tidy)?;
     }
     quality.validation = (0..)
         .zip(&tidy.validation)
@@ -218,27 +213,38 @@ pub fn quality(
     Ok(quality)
 }
 
+/// The batch of a record with its analyte.
+fn batch(record: &Arrived) -> Batch {
+    let date = record.date.filter(|_| record.batch == 0);
+    (record.file, record.batch, date, record.analyte)
+}
+
 /// Counts the detects of each blank's batch, and names those that are not far above the blank.
-fn hold_against_batches(
-    blanks: &mut [BlankDetect],
-    tidy: &Tidy,
-    detects: &BTreeMap<Batch, Vec<RecordId>>,
-) -> Result<(), FrameError> {
-    let records: Vec<_> = tidy.arrived()?.collect();
-    let record = |id: RecordId| records.get(id as usize);
-    for blank in blanks {
-        let Some(own) = record(blank.record) else { continue };
-        let date = own.date.filter(|_| own.batch == 0);
-        let batch = (own.file, own.batch, date, own.analyte);
-        let of_batch = detects.get(&batch).map_or(&[][..], Vec::as_slice);
-        blank.batch_detects = of_batch.len();
-        let near = |id: &&RecordId| {
-            let other = record(**id);
-            let value =
-                other.and_then(|other| other.unit?.convert(other.reading?.number(), blank.unit));
-            value.is_some_and(|value| value < TIMES_BLANK * blank.value)
-        };
-        blank.doubtful = of_batch.iter().filter(near).copied().collect();
+fn hold_against_batches(blanks: &mut [BlankDetect], tidy: &Tidy) -> Result<(), FrameError> {
+    let mut of_batch: BTreeMap<Batch, Vec<usize>> = BTreeMap::new();
+    let mut records = tidy.arrived()?;
+    let mut next = 0;
+    for (at, blank) in blanks.iter().enumerate() {
+        // Blanks stand in record order.
+        let skip = (blank.record - next) as usize;
+        next = blank.record + 1;
+        if let Some(own) = records.nth(skip) {
+            of_batch.entry(batch(&own)).or_default().push(at);
+        }
+    }
+    for record in tidy.arrived()? {
+        let Some(Reading::Measured(value)) = record.reading else { continue };
+        if tidy.ledger.fate(record.record) != Fate::Candidate {
+            continue;
+        }
+        for &at in of_batch.get(&batch(&record)).map_or(&[][..], Vec::as_slice) {
+            let blank = &mut blanks[at];
+            blank.batch_detects += 1;
+            let value = record.unit.and_then(|unit| unit.convert(value, blank.unit));
+            if value.is_some_and(|value| value < TIMES_BLANK * blank.value) {
+                blank.doubtful.push(record.record);
+            }
+        }
     }
     Ok(())
 }

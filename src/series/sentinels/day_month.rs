@@ -4,7 +4,7 @@
 //! suspected that lie far from every date of the file that can be read one way only, while with day
 //! and month exchanged they lie beside one.
 
-use std::collections::{BTreeMap, BTreeSet};
+use std::collections::BTreeSet;
 
 use chrono::{Datelike, NaiveDate};
 
@@ -42,8 +42,16 @@ struct Written {
 /// # Errors
 /// [`FrameError`], which would be a fault of this program.
 pub fn look(tidy: &Tidy) -> Result<Vec<Sentinel>, FrameError> {
-    let mut files: BTreeMap<u32, Vec<Written>> = BTreeMap::new();
+    let mut found = Vec::new();
+    let mut of: Vec<Written> = Vec::new();
+    let mut current = 0;
+    // Records stand file after file, so that one file's dates are held at a time.
     for record in tidy.arrived()? {
+        if record.file != current {
+            found.extend(of_file(current, &of));
+            of.clear();
+            current = record.file;
+        }
         let Some((first, second)) = parts(tidy.texts.text(record.date_written)) else { continue };
         let proves = match (first > 12, second > 12) {
             (true, false) => Some(First::Day),
@@ -54,10 +62,10 @@ pub fn look(tidy: &Tidy) -> Result<Vec<Sentinel>, FrameError> {
             .date
             .and_then(|date| NaiveDate::from_ymd_opt(date.year(), date.day(), date.month()))
             .filter(|other| proves.is_none() && Some(*other) != record.date);
-        let one = Written { record: record.record, read: record.date, proves, exchanged };
-        files.entry(record.file).or_default().push(one);
+        of.push(Written { record: record.record, read: record.date, proves, exchanged });
     }
-    Ok(files.into_iter().filter_map(|(file, dates)| of_file(file, &dates)).collect())
+    found.extend(of_file(current, &of));
+    Ok(found)
 }
 
 fn of_file(file: u32, dates: &[Written]) -> Option<Sentinel> {

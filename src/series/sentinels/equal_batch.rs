@@ -16,11 +16,11 @@ const OF_ANY: usize = 6;
 
 /// Looks at each analyte of each batch: same file and batch, else same file and date.
 pub fn look(histories: &[History<'_>], tidy: &Tidy) -> Vec<Sentinel> {
-    let mut batches: BTreeMap<_, Vec<(&History<'_>, &Seen)>> = BTreeMap::new();
+    let mut batches: BTreeMap<_, Vec<(&History<'_>, &Seen<'_>)>> = BTreeMap::new();
     for history in histories {
         let key = &history.series.key;
         for seen in &history.seen {
-            let date = (seen.batch == 0).then_some(seen.date);
+            let date = (seen.batch == 0).then_some(seen.said.date);
             let batch = (seen.file, seen.batch, date, key.site.as_str(), key.analyte.as_str());
             batches.entry(batch).or_default().push((history, seen));
         }
@@ -33,7 +33,7 @@ pub fn look(histories: &[History<'_>], tidy: &Tidy) -> Vec<Sentinel> {
         if wells.len() < needed {
             continue;
         }
-        let records = all.iter().map(|(_, seen)| seen.record).collect();
+        let records = all.iter().map(|(_, seen)| seen.said.record).collect();
         let mut one = Sentinel::of(Suspicion::EqualBatch, Scope::Batch, records);
         one.site = site.to_owned();
         one.file = Some(file);
@@ -47,8 +47,8 @@ pub fn look(histories: &[History<'_>], tidy: &Tidy) -> Vec<Sentinel> {
 }
 
 /// The one value that every result of a batch has; none if any differs or is no measured value.
-fn one_value(all: &[(&History<'_>, &Seen)]) -> Option<f64> {
-    let measured = |seen: &Seen| match seen.reading {
+fn one_value(all: &[(&History<'_>, &Seen<'_>)]) -> Option<f64> {
+    let measured = |seen: &Seen<'_>| match seen.said.reading {
         Reading::Measured(value) => Some(value),
         _ => None,
     };

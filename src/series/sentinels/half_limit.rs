@@ -19,21 +19,21 @@ const ROUNDING: f64 = 1e-9;
 /// Looks at each series, and at each analyte of a file where its series are short.
 pub fn look(histories: &[History<'_>]) -> Vec<Sentinel> {
     let mut found = Vec::new();
-    let mut rest: BTreeMap<(u32, &str, &str), (Vec<&Seen>, usize)> = BTreeMap::new();
+    let mut rest: BTreeMap<(u32, &str, &str), (Vec<&Seen<'_>>, usize)> = BTreeMap::new();
     for history in histories {
         let key = &history.series.key;
         let limits = limits(history);
-        let under: Vec<&Seen> =
+        let under: Vec<&Seen<'_>> =
             history.seen.iter().filter(|one| is_under(one, &limits).is_some()).collect();
-        let halves: Vec<&Seen> =
+        let halves: Vec<&Seen<'_>> =
             under.iter().copied().filter(|one| is_under(one, &limits) == Some(true)).collect();
         if is_many(halves.len(), under.len()) {
-            let records = halves.iter().map(|one| one.record).collect();
+            let records = halves.iter().map(|one| one.said.record).collect();
             let mut one = Sentinel::of(Suspicion::HalfLimit, Scope::Series, records);
             one.site.clone_from(&key.site);
             one.well = Some(key.well.clone());
             one.analyte = Some(key.analyte.clone());
-            one.figure = halves.first().map(|half| half.reading.number());
+            one.figure = halves.first().map(|half| half.said.reading.number());
             found.push(one);
             continue;
         }
@@ -47,12 +47,12 @@ pub fn look(histories: &[History<'_>]) -> Vec<Sentinel> {
     }
     for ((file, site, analyte), (halves, under)) in rest {
         if is_many(halves.len(), under) {
-            let records = halves.iter().map(|one| one.record).collect();
+            let records = halves.iter().map(|one| one.said.record).collect();
             let mut one = Sentinel::of(Suspicion::HalfLimit, Scope::Analyte, records);
             one.site = site.to_owned();
             one.file = Some(file);
             one.analyte = Some(analyte.to_owned());
-            one.figure = halves.first().map(|half| half.reading.number());
+            one.figure = halves.first().map(|half| half.said.reading.number());
             found.push(one);
         }
     }
@@ -70,7 +70,7 @@ fn limits(history: &History<'_>) -> Vec<f64> {
     let mut limits: Vec<f64> = history
         .seen
         .iter()
-        .filter_map(|one| match one.reading {
+        .filter_map(|one| match one.said.reading {
             Reading::Below(limit) => Some(limit),
             _ => None,
         })
@@ -82,8 +82,9 @@ fn limits(history: &History<'_>) -> Vec<f64> {
 
 /// Whether a measured value under its limit is exactly half of it; none if it is not under one.
 fn is_under(seen: &Seen, of_series: &[f64]) -> Option<bool> {
-    let Reading::Measured(value) = seen.reading else { return None };
-    let own: Vec<f64> = seen.limits.iter().flatten().copied().collect();
+    let Reading::Measured(value) = seen.said.reading else { return None };
+    let own: Vec<f64> =
+        [seen.said.reporting_limit, seen.said.detection_limit].into_iter().flatten().collect();
     let limits = if own.is_empty() { of_series } else { &own };
     if !limits.iter().any(|limit| value < *limit) {
         return None;

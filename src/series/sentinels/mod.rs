@@ -125,7 +125,8 @@ pub fn sentinels(
     found.extend(day_month::look(tidy)?);
     found.extend(outside_life::look(&histories, site));
     found.extend(outside_life::limits_over(&histories));
-    found.extend(panel::look(tidy, RoundRules { length: site.settings.round })?);
+    let rules = RoundRules { length: site.settings.round };
+    found.extend(panel::look(tidy, series, &places, rules));
     for one in &mut found {
         one.records.sort_unstable();
     }

@@ -35,7 +35,7 @@ enum Expected {
 /// One result beside what its own history leads to expect.
 struct Panelled<'a> {
     analyte: (&'a str, &'a str, &'a str),
-    seen: &'a Seen,
+    seen: &'a Seen<'a>,
     expected: Expected,
     spread: f64,
 }
@@ -53,7 +53,7 @@ pub fn look(histories: &[History<'_>]) -> Vec<Sentinel> {
                 Expected::UpTo(_) => spread.max(UNSEEN_SPREAD),
             };
             let analyte = (key.analyte.as_str(), key.fraction_code(), key.depth_text());
-            let of_date = panels.entry((&key.site, seen.date)).or_default();
+            let of_date = panels.entry((&key.site, seen.said.date)).or_default();
             let one = Panelled { analyte, seen, expected, spread };
             of_date.entry(&key.well).or_default().push(one);
         }
@@ -85,7 +85,7 @@ pub fn look(histories: &[History<'_>]) -> Vec<Sentinel> {
                 let has = |panel: &[Panelled<'_>]| panel.iter().any(|o| o.analyte == one.analyte);
                 has(&wells[a]) && has(&wells[b])
             };
-            let records = both().filter(shared).map(|one| one.seen.record).collect();
+            let records = both().filter(shared).map(|one| one.seen.said.record).collect();
             let mut one = Sentinel::of(Suspicion::WellsSwapped, Scope::Wells, records);
             one.site = site.to_owned();
             one.date = Some(date);
@@ -129,15 +129,15 @@ fn gain(a: &[Panelled<'_>], b: &[Panelled<'_>]) -> Option<f64> {
 /// of four were not detected, no more than the highest of their limits.
 fn expected(history: &History<'_>, at: usize) -> Option<Expected> {
     const MOST_OF_FOUR: usize = 3;
-    let date = history.seen[at].date;
-    let near = history.neighbours(at, |one| one.date != date);
+    let date = history.seen[at].said.date;
+    let near = history.neighbours(at, |one| one.said.date != date);
     let measured: Vec<f64> = near.iter().filter_map(|one| one.ln()).collect();
     if measured.len() >= MOST_OF_FOUR {
         return median(&measured).map(Expected::About);
     }
     let limits: Vec<f64> = near
         .iter()
-        .filter_map(|one| match one.reading {
+        .filter_map(|one| match one.said.reading {
             Reading::Below(limit) if limit > 0.0 => Some(limit.ln()),
             _ => None,
         })
@@ -149,7 +149,7 @@ fn expected(history: &History<'_>, at: usize) -> Option<Expected> {
 
 /// How many spreads a reading lies from what is expected; none where the two do not contradict.
 fn distance(seen: &Seen, expected: Expected, spread: f64) -> f64 {
-    let off = match (seen.reading, expected) {
+    let off = match (seen.said.reading, expected) {
         (Reading::Measured(value), Expected::About(level)) => (value.ln() - level).abs(),
         (Reading::Measured(value), Expected::UpTo(level)) => (value.ln() - level).max(0.0),
         (Reading::Below(limit), Expected::About(level)) => (level - limit.ln()).max(0.0),

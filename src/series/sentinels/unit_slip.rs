@@ -28,7 +28,7 @@ const TOGETHER: f64 = 0.75;
 #[derive(Clone, Copy)]
 struct Held<'a> {
     history: &'a History<'a>,
-    seen: &'a Seen,
+    seen: &'a Seen<'a>,
     /// The files of the neighbours.
     near: [Option<u32>; 4],
     ratio: f64,
@@ -49,13 +49,13 @@ fn held<'a>(
     at: usize,
     spread: Option<f64>,
     fewest: usize,
-    counts: impl Fn(&Seen) -> bool,
+    counts: impl Fn(&Seen<'_>) -> bool,
 ) -> Option<Held<'a>> {
     let seen = &history.seen[at];
     let own = seen.ln()?;
     let neighbours = history.neighbours(at, counts);
     let files: Vec<u32> = neighbours.iter().map(|one| one.file).collect();
-    let near: Vec<f64> = neighbours.into_iter().filter_map(Seen::ln).collect();
+    let near: Vec<f64> = neighbours.into_iter().filter_map(|one| one.ln()).collect();
     if near.len() < fewest {
         return None;
     }
@@ -131,8 +131,9 @@ fn files_held<'a>(of: &[&'a History<'a>], slipped: &BTreeSet<u32>) -> BTreeMap<u
     for history in of {
         for at in 0..history.seen.len() {
             let file = history.seen[at].file;
-            let counts =
-                |one: &Seen| one.file != file && !slipped.contains(&one.file) && one.ln().is_some();
+            let counts = |one: &Seen<'_>| {
+                one.file != file && !slipped.contains(&one.file) && one.ln().is_some()
+            };
             // The spread of the whole series would hold the slipped values too.
             let fewest = FEWEST_TOGETHER;
             if let Some(held) =
@@ -162,14 +163,16 @@ fn by_sample(histories: &[History<'_>], known: &BTreeSet<RecordId>) -> Vec<Senti
     for history in histories {
         for at in 0..history.seen.len() {
             let own = &history.seen[at];
-            if known.contains(&own.record) {
+            if known.contains(&own.said.record) {
                 continue;
             }
-            let counts = |one: &Seen| {
-                one.date != own.date && one.ln().is_some() && !known.contains(&one.record)
+            let counts = |one: &Seen<'_>| {
+                one.said.date != own.said.date
+                    && one.ln().is_some()
+                    && !known.contains(&one.said.record)
             };
             if let Some(held) = held(history, at, history.spread, FEWEST, counts) {
-                let key = (&history.series.key.site, &history.series.key.well, own.date);
+                let key = (&history.series.key.site, &history.series.key.well, own.said.date);
                 if held.slips {
                     slipped.insert(key);
                 }
@@ -192,7 +195,7 @@ fn by_sample(histories: &[History<'_>], known: &BTreeSet<RecordId>) -> Vec<Senti
 
 /// The sentinel of results that slip together.
 fn sentinel(scope: Scope, slips: &[Held<'_>]) -> Sentinel {
-    let records = slips.iter().map(|one| one.seen.record).collect();
+    let records = slips.iter().map(|one| one.seen.said.record).collect();
     let ratios: Vec<f64> = slips.iter().map(|one| one.ratio).collect();
     let mut one = Sentinel::of(Suspicion::UnitSlip, scope, records);
     one.figure = median(&ratios);
@@ -202,7 +205,7 @@ fn sentinel(scope: Scope, slips: &[Held<'_>]) -> Sentinel {
         one.file = Some(first.seen.file);
         if matches!(scope, Scope::Sample | Scope::Result) {
             one.well = Some(key.well.clone());
-            one.date = Some(first.seen.date);
+            one.date = Some(first.seen.said.date);
         }
         if scope == Scope::Result {
             one.analyte = Some(key.analyte.clone());

@@ -7,7 +7,7 @@ use super::seeds::{Kind, Seed};
 /// The most bytes of an ordinary input; one in a thousand may have [`HUGE`].
 const LARGE: usize = 64 << 10;
 /// See [`LARGE`].
-const HUGE: usize = 2 << 20;
+const HUGE: usize = 1 << 20;
 
 /// One input.
 pub struct Input {
