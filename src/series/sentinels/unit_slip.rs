@@ -35,6 +35,9 @@ struct Held<'a> {
     slips: bool,
 }
 
+/// The results of one analyte that slip together.
+type OfAnalyte<'a> = (&'a str, Vec<Held<'a>>);
+
 /// Looks for slips: first those that whole files share, then single samples and results.
 pub fn look(histories: &[History<'_>]) -> Vec<Sentinel> {
     let mut found = by_file(histories);
@@ -76,7 +79,7 @@ fn by_file(histories: &[History<'_>]) -> Vec<Sentinel> {
             analytes.entry((&key.site, &key.analyte)).or_default().push(history);
         }
     }
-    let mut together: BTreeMap<(u32, &str), Vec<(&str, Vec<Held<'_>>)>> = BTreeMap::new();
+    let mut together: BTreeMap<(u32, &str), Vec<OfAnalyte<'_>>> = BTreeMap::new();
     let mut comparable: BTreeMap<(u32, &str), usize> = BTreeMap::new();
     for ((site, analyte), of) in analytes {
         for (file, held) in files_held(&of, &BTreeSet::new()) {

@@ -291,10 +291,10 @@ fn change_table(bytes: &mut Vec<u8>, numbers: &mut Numbers, most: usize) {
         }
         4 => all.insert(at, b"\n".to_vec()),
         5 => {
-            let other = *numbers.one(&[b',', b';', b'\t', b'|', b' ']);
+            let other = *numbers.one(b",;\t| ");
             let swap = |byte: &mut u8| {
                 if *byte == separator {
-                    *byte = other
+                    *byte = other;
                 }
             };
             all.iter_mut().for_each(|line| line.iter_mut().for_each(swap));

@@ -56,7 +56,7 @@ fn read_sources(sources: &Sources, site: &Site, number: u64) -> Result<u64, Stri
     let tidy = tidy(sources, site, &|_| true).map_err(|error| error.to_string())?;
     let tidy = tidy.ok_or("the reading stopped by itself")?;
     let records = balanced(&tidy, site)?;
-    if number % WHOLE == 0 && records > 0 {
+    if number.is_multiple_of(WHOLE) && records > 0 {
         whole(sources, site)?;
     }
     Ok(records)
