@@ -1,6 +1,7 @@
 //! How inputs are made from seeds: bytes changed, lines and cells moved, values replaced.
 
 use super::container;
+use super::kept;
 use super::numbers::Numbers;
 use super::seeds::{Kind, Seed};
 
@@ -183,6 +184,9 @@ const VALUES: [&str; 24] = [
 
 /// The input with a number.
 pub fn input(seeds: &[Seed], seed: u64, number: u64) -> Input {
+    if let Some(kept) = kept::input(number) {
+        return kept;
+    }
     let mut numbers = Numbers::of(seed, number);
     let from = numbers.one(seeds);
     let most = if numbers.once_in(1000) { HUGE } else { LARGE };

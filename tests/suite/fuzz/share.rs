@@ -4,7 +4,7 @@ use std::fmt;
 use std::fs;
 use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::path::{Path, PathBuf};
-use std::time::{Duration, Instant};
+use std::time::Duration;
 
 use super::mutate::input;
 use super::read::read;
@@ -12,6 +12,11 @@ use super::{memory, seeds};
 
 /// The variable that names a share: seed, first input, end, report.
 pub const SHARE: &str = "EBBWELL_FUZZ_SHARE";
+
+/// The longest that one input may take, in processor time.
+const SLOWEST: Duration = Duration::from_secs(2);
+/// The most memory that one input may take beyond what the process had before it.
+const LARGEST: u64 = 200 * 1024 * 1024;
 
 /// What became of a share.
 #[derive(Default)]
@@ -39,6 +44,17 @@ impl Report {
             (self.largest, self.largest_input) = (other.largest, other.largest_input);
         }
         self.failures.extend(other.failures);
+    }
+
+    /// Fails if an input took too long or too much.
+    pub fn keeps_the_limits(&self) {
+        assert!(self.slowest <= SLOWEST, "input {} took {:?}", self.slowest_input, self.slowest);
+        assert!(
+            self.largest <= LARGEST,
+            "input {} took {} bytes",
+            self.largest_input,
+            self.largest
+        );
     }
 
     fn text(&self) -> String {
@@ -129,7 +145,7 @@ pub fn work(share: &str) -> Report {
     for number in from..to {
         fs::write(&at, number.to_string()).expect("the place can be written");
         let made = input(&seeds, seed, number);
-        let begun = Instant::now();
+        let begun = memory::processor_time();
         let (outcome, grown) = memory::peak_of(|| {
             let mut counted = None;
             let panic = {
@@ -142,7 +158,7 @@ pub fn work(share: &str) -> Report {
                 (None, None) => Err("was not read".to_owned()),
             }
         });
-        let took = begun.elapsed();
+        let took = memory::processor_time() - begun;
         report.inputs += 1;
         if took > report.slowest {
             (report.slowest, report.slowest_input) = (took, number);
