@@ -154,6 +154,7 @@ fn check_page(ran: &Ran, sites: &[PathBuf], how: &HowArgs, voice: Voice) -> Exit
         run: &ran.findings.run,
         site: &ran.findings.site,
         notes: &ran.findings.notes,
+        arrival: &ran.findings.arrival,
         examples: &ran.examples,
     };
     if how.json {

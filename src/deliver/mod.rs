@@ -2,6 +2,7 @@
 //!
 //! Renderers are pure, from findings to text. [`write`](mod@write) is the only code that makes files.
 
+pub mod arrival_json;
 pub mod json;
 pub mod cells;
 pub mod tables;

@@ -1,7 +1,9 @@
 //! What `check`, `show` and `explain` print with `--json`.
 
+use super::arrival_json;
 use super::cells::in_json;
 use super::json::Json;
+use super::run_json::{applied, mapping};
 use super::summary_json::{notes, outcomes, run, series as series_json, site};
 use super::tables::ledger;
 use crate::findings::{Findings, SCHEMA_VERSION, SeriesFinding, UsedValue};
@@ -21,6 +23,11 @@ pub fn check_json(facts: &CheckFacts<'_>) -> String {
         ("site", site(facts.site)),
         ("caution", Json::Text(caution::caution(facts.site))),
         ("notes", notes(facts.notes)),
+        ("sentinels", arrival_json::sentinels(facts.arrival)),
+        ("quality", arrival_json::quality(facts.arrival, facts.run.rpd_allowed)),
+        ("completeness", arrival_json::completeness(facts.arrival)),
+        ("mapping", mapping(facts.run)),
+        ("applied", applied(facts.run)),
         ("records", outcomes(&facts.run.outcomes)),
         ("examples", Json::List(examples.collect())),
     ])

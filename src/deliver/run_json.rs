@@ -26,6 +26,7 @@ pub fn run_json(run: &RunFacts, site: &SiteFacts, outputs: &BTreeMap<String, Str
         ("settings_off_default", pairs(&run.off_default)),
         ("decisions", decisions(run)),
         ("mapping", mapping(run)),
+        ("applied", applied(run)),
         ("outputs", Json::Map(outputs.collect())),
     ])
     .to_text()
@@ -76,7 +77,8 @@ fn decisions(run: &RunFacts) -> Json {
     Json::List(decisions.collect())
 }
 
-fn mapping(run: &RunFacts) -> Json {
+/// Which header was read as which column.
+pub(super) fn mapping(run: &RunFacts) -> Json {
     let mapping = run.mapping.iter().map(|mapped| {
         Json::Object(vec![
             ("file", Json::text(&mapped.file)),
@@ -86,4 +88,17 @@ fn mapping(run: &RunFacts) -> Json {
         ])
     });
     Json::List(mapping.collect())
+}
+
+/// Which names and units were read as which.
+pub(super) fn applied(run: &RunFacts) -> Json {
+    let applied = run.applied.iter().map(|one| {
+        Json::Object(vec![
+            ("what", Json::text(one.what)),
+            ("from", Json::text(&one.from)),
+            ("to", Json::text(&one.to)),
+            ("records", Json::count(one.records)),
+        ])
+    });
+    Json::List(applied.collect())
 }

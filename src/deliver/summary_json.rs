@@ -1,5 +1,6 @@
 //! summary.json: the whole of the findings for a script. Later work adds keys and changes none.
 
+use super::arrival_json;
 use super::cells::in_json;
 use super::charts;
 use super::json::Json;
@@ -24,6 +25,9 @@ pub fn summary_json(findings: &Findings) -> String {
         ("site", site(&findings.site)),
         ("caution", Json::Text(caution::caution(&findings.site))),
         ("notes", notes(&findings.notes)),
+        ("sentinels", arrival_json::sentinels(&findings.arrival)),
+        ("quality", arrival_json::quality(&findings.arrival, findings.run.rpd_allowed)),
+        ("completeness", arrival_json::completeness(&findings.arrival)),
         (
             "verdict_counts",
             Json::Object(

@@ -4,10 +4,13 @@ pub mod series;
 pub mod wells;
 pub mod run;
 pub mod columns;
+pub mod arrival;
 
+pub use arrival::Arrival;
 pub use columns::{Cell, Column};
 pub use run::{
-    DecisionFacts, FileFacts, InputHash, LedgerRow, Note, OutcomeCount, RunFacts, SiteFacts,
+    AppliedFacts, DecisionFacts, FileFacts, InputHash, LedgerRow, Note, OutcomeCount, RunFacts,
+    SiteFacts,
 };
 pub use series::{BandPoint, DuplicateFinding, Fitted, SeriesFinding, UsedValue};
 pub use wells::WellFinding;
@@ -26,6 +29,8 @@ pub struct Findings {
     pub site: SiteFacts,
     /// What is told once, most important last.
     pub notes: Vec<Note>,
+    /// What was found out about the data before any fit.
+    pub arrival: Arrival,
     /// One entry a series, sorted by site, well, analyte, fraction, depth.
     pub series: Vec<SeriesFinding>,
     /// One entry a well, sorted by site and well.

@@ -38,6 +38,23 @@ pub struct RunFacts {
     pub decisions: Vec<DecisionFacts>,
     /// Which header of which file was read as which column.
     pub mapping: Vec<MappingFacts>,
+    /// Which names and units were read as which.
+    pub applied: Vec<AppliedFacts>,
+    /// The relative percent difference over which duplicates differ.
+    pub rpd_allowed: f64,
+}
+
+/// A name or unit that was read as another.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+pub struct AppliedFacts {
+    /// What it is: `analyte`, `well`, `fraction` (taken as the listed one) or `unit`.
+    pub what: &'static str,
+    /// As written; for a fraction, the analyte.
+    pub from: String,
+    /// As read.
+    pub to: String,
+    /// How many records it concerns.
+    pub records: usize,
 }
 
 /// A file that is not a results file but decides the run.

@@ -240,6 +240,7 @@ impl CompanionFile {
                     dilution: Dilution::None,
                     excluded_by: None,
                     qualified_by: None,
+                    batch: 0,
                     joined_by: None,
                 }
             })

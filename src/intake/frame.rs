@@ -2,7 +2,7 @@
 
 use polars::prelude::{Column, DataFrame, PolarsError};
 
-use super::rows::{Kind, Row};
+use super::rows::{Dilution, Kind, Row};
 use crate::terms::{Reading, Unit};
 
 /// The frame could not be built or read, which is a fault of this program: its columns have one
@@ -85,6 +85,8 @@ pub(crate) fn frame(rows: &[Row]) -> Result<DataFrame, PolarsError> {
         column!("detection_limit", |r| r.detection_limit),
         column!("estimated", |r| u8::from(r.estimated)),
         column!("kind", kind),
+        column!("batch", |r| r.batch),
+        column!("diluted", |r| u8::from(r.dilution == Dilution::Diluted)),
         column!("excluded_by", |r| r.excluded_by.map(u32::from)),
     ];
     DataFrame::new(rows.len(), columns)

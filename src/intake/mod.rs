@@ -40,7 +40,9 @@ pub mod frame;
 pub mod arrival;
 pub mod tidy;
 pub mod account;
+pub mod arrived;
 
+pub use arrived::{Arrived, Places};
 pub use frame::FrameError;
 pub use source::{Found, Sources};
 pub use stations::Station;

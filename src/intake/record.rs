@@ -84,6 +84,7 @@ impl RecordReader<'_> {
             estimated: false,
             kind: Kind::Other,
             dilution: Dilution::None,
+            batch: texts.code(self.table.cell(line, Column::Batch)),
             excluded_by: None,
             qualified_by: None,
             joined_by: resolved.joined_by,
@@ -94,12 +95,22 @@ impl RecordReader<'_> {
             _ if self.table.is_ragged(line) => Fate::SetAside(SetAside::Ragged),
             _ if self.table.holds_error(line) => Fate::SetAside(SetAside::CellError),
             _ if resolved.other_site => Fate::SetAside(SetAside::OtherSite),
+            Err(fate @ Fate::QualityControl(QualityControl::Blank)) => {
+                self.blank(line, &mut row, day, texts);
+                fate
+            }
             Err(fate @ (Fate::QualityControl(_) | Fate::SetAside(_))) => fate,
             _ if row.well == 0 => Fate::SetAside(SetAside::NoWell),
             Err(gap) => gap,
             Ok(kind) => {
                 row.kind = kind;
-                let named = resolved.refused.map_or(Ok(()), Err);
+                // A duplicate is held against its sample whatever its medium is called: agencies
+                // give quality control a medium of its own.
+                let other_medium = Fate::SetAside(SetAside::OtherMedium);
+                let refused = resolved
+                    .refused
+                    .filter(|fate| kind != Kind::Duplicate || *fate != other_medium);
+                let named = refused.map_or(Ok(()), Err);
                 let dated = named.and(read_date.map(|_| ()));
                 let fate = match dated {
                     Ok(()) => self.value(line, &mut row, day, texts, &mut told),
@@ -183,6 +194,14 @@ impl RecordReader<'_> {
             SampleType::NotSampled => Err(Fate::NonResult(NonResult::NotSampled)),
             SampleType::NotAnalysed => Err(Fate::NonResult(NonResult::NotAnalysed)),
             SampleType::NotReported => Err(Fate::NonResult(NonResult::NotReported)),
+        }
+    }
+
+    /// What a blank says, for the statement on quality. Its number enters no fit, so what cannot be
+    /// read of it is no note of its own: a blank without a reading is counted as such.
+    fn blank(&self, line: &Line, row: &mut Row, day: Option<NaiveDate>, texts: &mut Texts) {
+        if self.value(line, row, day, texts, &mut Vec::new()).is_err() {
+            row.reading = None;
         }
     }
 

@@ -97,6 +97,8 @@ pub struct Row {
     pub kind: Kind,
     /// Diluted, or over the calibration.
     pub dilution: Dilution,
+    /// The laboratory's batch as written; 0 where the file has none.
+    pub batch: Code,
     /// The decision that excludes it.
     pub excluded_by: Option<u16>,
     /// The decision that says what its qualifiers mean.

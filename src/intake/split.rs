@@ -66,10 +66,18 @@ pub fn split(text: &str, separator: u8) -> Lines {
         if cells.iter().all(|cell| cell.trim().is_empty()) {
             blank += 1;
         } else {
-            lines.push(Line { spans, ..Line::whole(line, cells.clone()) });
+            lines.push(Line { spans, ..Line::whole(line, own(&cells)) });
         }
     }
     Lines { lines, blank }
+}
+
+/// The cells of a record alone. A clone would copy the reader's whole buffers, which are as long as
+/// the longest record so far: one long cell or wide line would swell every record after it.
+fn own(cells: &StringRecord) -> StringRecord {
+    let mut own = StringRecord::with_capacity(cells.as_slice().len(), cells.len());
+    own.extend(cells.iter());
+    own
 }
 
 /// Counts line ends (`\n`, `\r\n`, bare `\r`) as the reader moves on.

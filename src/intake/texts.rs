@@ -35,6 +35,12 @@ impl Texts {
         code
     }
 
+    /// The code of a text that is known already.
+    #[must_use]
+    pub fn known(&self, text: &str) -> Option<Code> {
+        self.codes.get(text).copied()
+    }
+
     /// The text of a code.
     #[must_use]
     pub fn text(&self, code: Code) -> &str {

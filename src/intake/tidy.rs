@@ -43,6 +43,8 @@ pub struct Tidy {
     pub told: Vec<Told>,
     /// Where wells stand, from station files.
     pub stations: Vec<Station>,
+    /// To what stage each file was validated, where the site file says so.
+    pub validation: Vec<Option<String>>,
     /// How many records each decision touched, in the order of the site file.
     pub decided: Vec<usize>,
 }
@@ -72,6 +74,7 @@ pub fn tidy(
     let (mut rows, mut files, mut mapping, mut told) =
         (Vec::new(), Vec::new(), Vec::new(), Vec::new());
     let mut companions = Companions::read(&found, site);
+    let mut validation = Vec::new();
     let mut limit_records = Vec::new();
     for (at, file) in found.into_iter().enumerate() {
         if !between(&file.name) {
@@ -90,6 +93,7 @@ pub fn tidy(
             }
             mapping.extend(companion.mapping(&file.name));
             files.push(companion.facts(file));
+            validation.push(rule.validation.clone());
             continue;
         }
         let contents = match layout::read(&file, rule, site) {
@@ -120,6 +124,7 @@ pub fn tidy(
             let problem = TableProblem::Sheet { sheet, problem: Box::new(problem) };
             unreadable.push(Unreadable { name: file.name.clone(), problem });
         }
+        validation.push(rule.validation.clone());
     }
     for (record, matched) in limit_records.into_iter().zip(companions.limits.matched()) {
         if *matched {
@@ -154,6 +159,7 @@ pub fn tidy(
         mapping,
         told,
         stations,
+        validation,
         decided,
     }))
 }

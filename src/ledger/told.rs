@@ -260,6 +260,11 @@ pub enum Told {
         /// The file.
         file: String,
     },
+    /// Something to look at before any fit.
+    Suspected {
+        /// What.
+        what: Suspicion,
+    },
     /// A statistical setting that is not at its default.
     SettingOffDefault {
         /// The key.
@@ -267,6 +272,56 @@ pub enum Told {
         /// What it is.
         is: String,
     },
+}
+
+/// What is suspected, or told as a fact, of records on arrival.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Suspicion {
+    /// 1,000 times its history, or a thousandth.
+    UnitSlip,
+    /// Day and month in another order than in the rest of the file.
+    DayMonth,
+    /// Two wells' values exchanged on one date.
+    WellsSwapped,
+    /// Non-detects replaced by half of their limit before the file was made.
+    HalfLimit,
+    /// Every value of a batch equal.
+    EqualBatch,
+    /// Dated outside the site's life.
+    OutsideLife,
+    /// Not detected, with a limit over the regulatory limit.
+    LimitOverLimit,
+    /// Absent from a round in which its panel is present.
+    MissingFromPanel,
+}
+
+impl Suspicion {
+    /// All of them, in the order of outputs.
+    pub const ALL: [Self; 8] = [
+        Self::UnitSlip,
+        Self::DayMonth,
+        Self::WellsSwapped,
+        Self::HalfLimit,
+        Self::EqualBatch,
+        Self::OutsideLife,
+        Self::LimitOverLimit,
+        Self::MissingFromPanel,
+    ];
+
+    /// The code in outputs.
+    #[must_use]
+    pub fn code(self) -> &'static str {
+        match self {
+            Self::UnitSlip => "unit-slip",
+            Self::DayMonth => "day-month-order",
+            Self::WellsSwapped => "wells-swapped",
+            Self::HalfLimit => "half-limit",
+            Self::EqualBatch => "equal-batch",
+            Self::OutsideLife => "outside-site-life",
+            Self::LimitOverLimit => "limit-over-limit",
+            Self::MissingFromPanel => "missing-from-panel",
+        }
+    }
 }
 
 /// What a cell should have held.

@@ -5,10 +5,11 @@ use super::critical_slopes::{CriticalSlopes, Ends};
 use super::interval::Interval;
 use super::kendall::mann_kendall;
 use super::points::Points;
+use super::slope_gaps::{Gap, Staircase};
 use super::tails;
 
 /// Rounds in which an end and the variance at it are brought to agree, at most (a count). Source:
-/// three or four suffice for long series; of short ones some go to and fro between two steps.
+/// three or four suffice for series so long that their slopes are counted.
 const MOST_ROUNDS: usize = 30;
 
 /// A round that moves an end by less than this share of its distance from the slope (a pure number)
@@ -34,10 +35,10 @@ pub struct AkritasTheilSen {
 /// slope:  the middle of the b with S(b) = 0
 /// ends:   S(b) = ±z·√Var(b)     Var(b) Daniels' variance of the residuals y − b·t
 /// ```
-/// where z is the two-sided normal quantile of `confidence`; S is read between its steps as in
-/// [`CriticalSlopes::ends`], and each end is the b at which the variance and S at that same b agree;
-/// of two between which that goes to and fro the outer is taken. With every value measured this is
-/// [`super::theil_sen()`], the variance being that of the values.
+/// where z is the two-sided normal quantile of `confidence`. S and Var change in steps; each end
+/// lies in the first stretch between two steps on which |S| is over z·√Var, at the share of it that
+/// Gilbert's ranks give. With every value measured this is [`super::theil_sen()`], the variance
+/// being that of the values.
 ///
 /// # Units
 /// `t` in years, `y` in ln(concentration): the slope is per year, negative when falling.
@@ -45,8 +46,8 @@ pub struct AkritasTheilSen {
 ///
 /// # Limits
 /// Up to about 300 points all slopes are held in memory; above, memory is of order n. The variance
-/// is taken anew at each end since it depends on b: simulated (n 8 to 100, up to 70 % non-detects,
-/// 4,000 runs a cell), a nominal 90 % covers 0.89 to 0.96 so, no tail over 0.061. With the variance
+/// is taken anew at each b since it depends on it: simulated (n 8 to 100, up to 70 % non-detects,
+/// 4,000 runs a cell), a nominal 90 % covers 0.89 to 0.95 so, no tail over 0.061. With the variance
 /// at the slope one tail reaches 0.11, with that at b = 0 a steep series covers 0.95 to 1.00.
 ///
 /// # None
@@ -65,9 +66,18 @@ pub fn akritas_theil_sen(points: Points<'_>, confidence: f64) -> Option<AkritasT
     } else {
         let times = time_sums(points.t());
         let height = |b: f64| z * variance(points, b, times).sqrt();
-        Ends {
-            low: settled(slope, height, |height| slopes.low_end(height)),
-            high: settled(slope, height, |height| slopes.high_end(height)),
+        let (rises, falls, near) = (slopes.rises(), slopes.falls(), height(slope));
+        if let Some(stairs) = slopes.staircase() {
+            // The upper end is the lower one of the values upside down.
+            let turned = stairs.turned();
+            let high = first_rejected(&turned, falls, near, |b| height(-b));
+            let low = first_rejected(stairs, rises, near, height);
+            Ends { low, high: high.map(|high| -high) }
+        } else {
+            Ends {
+                low: settled(slope, near, height, |height| slopes.low_end(height)),
+                high: settled(slope, near, height, |height| slopes.high_end(height)),
+            }
         }
     };
     let finite = slope.is_finite() && zero.low.is_finite() && zero.high.is_finite();
@@ -85,13 +95,52 @@ fn variance(points: Points<'_>, b: f64, times: ScoreSums) -> f64 {
     }
 }
 
-/// The end that agrees with the height at itself.
+/// The end in the first stretch below the slope on which S is over the height there.
+///
+/// Sought from where the height `near` the slope would put it, by steps outwards of twice the last,
+/// and by halving once a stretch is rejected.
+fn first_rejected(
+    stairs: &Staircase,
+    rises: u64,
+    near: f64,
+    height: impl Fn(f64) -> f64,
+) -> Option<f64> {
+    let excess = |gap: &Gap| rises as f64 - gap.lost as f64 - height(gap.middle());
+    let mut inside = stairs.gap_above(rises);
+    let mut outside: Option<Gap> = None;
+    // Places up to `low` are rejected or farther out, those after `high` are inside.
+    let (mut low, mut high) = (0, inside.lost);
+    let (mut place, mut stride) = ((rises as f64 - near).max(0.0) as u64 + 1, 1);
+    while low < high {
+        let gap = stairs.gap_below(place.clamp(low + 1, high));
+        if excess(&gap) > 0.0 {
+            low = gap.upto;
+            outside = Some(gap);
+        } else {
+            high = gap.lost;
+            inside = gap;
+        }
+        if outside.is_some() {
+            place = low + high.saturating_sub(low).div_ceil(2);
+        } else {
+            place = high.saturating_sub(stride);
+            stride *= 2;
+        }
+    }
+    let outside = outside?;
+    let (over, under) = (excess(&outside), excess(&inside));
+    let (outer, inner) = (outside.low?, outside.high?);
+    Some(outer + over / (over - under) * (inner - outer))
+}
+
+/// The end that agrees with the height at itself, for slopes so many that steps do not matter.
 fn settled(
     slope: f64,
+    near: f64,
     height: impl Fn(f64) -> f64,
     mut end: impl FnMut(f64) -> Option<f64>,
 ) -> Option<f64> {
-    let mut last = end(height(slope))?;
+    let mut last = end(near)?;
     let mut next = last;
     for _ in 0..MOST_ROUNDS {
         next = end(height(last))?;
@@ -100,6 +149,6 @@ fn settled(
         }
         (last, next) = (next, last);
     }
-    let outer = if (next - slope).abs() > (last - slope).abs() { next } else { last };
-    Some(outer)
+    // Where the two do not settle, the outer one.
+    Some(if (next - slope).abs() > (last - slope).abs() { next } else { last })
 }

@@ -8,6 +8,7 @@
 use super::interval::Interval;
 use super::points::{Point, Points};
 use super::slope_counting::{Critical, Timed};
+use super::slope_gaps::Staircase;
 use super::slope_search::SlopeSearch;
 
 /// Up to this many pairs (a count) every slope is computed and sorted; above, slopes are counted
@@ -20,6 +21,8 @@ pub struct CriticalSlopes {
     search: SlopeSearch,
     rises: u64,
     falls: u64,
+    /// Whether the window holds every slope.
+    few: bool,
     /// The slopes looked at last; every slope where there are few.
     window: Window,
 }
@@ -28,9 +31,7 @@ pub struct CriticalSlopes {
 #[derive(Clone, Debug, Default)]
 struct Window {
     before: u64,
-    slopes: Vec<Critical>,
-    /// Lost up to and with each slope.
-    upto: Vec<u64>,
+    stairs: Staircase,
 }
 
 /// One step of the staircase.
@@ -85,7 +86,7 @@ impl CriticalSlopes {
         let few = groups.iter().map(pairs).sum::<usize>() <= pairs_up_to;
         let search = SlopeSearch::new(groups, rises + falls, !few);
         let window = if few { Window::new(0, search.every_slope()) } else { Window::default() };
-        CriticalSlopes { search, rises, falls, window }
+        CriticalSlopes { search, rises, falls, few, window }
     }
 
     /// S below all slopes.
@@ -96,6 +97,11 @@ impl CriticalSlopes {
     /// Minus S above all slopes.
     pub fn falls(&self) -> u64 {
         self.falls
+    }
+
+    /// Every slope, where there are few.
+    pub fn staircase(&self) -> Option<&Staircase> {
+        self.few.then_some(&self.window.stairs)
     }
 
     /// The slopes at which S is zero, or the one where it passes zero.
@@ -186,7 +192,8 @@ impl CriticalSlopes {
         let window = Window::new(found.before, found.slopes);
         let step = if found.complete { window.at(place) } else { None };
         // Where the place is not among them, what there is differs by rounding only: any will do.
-        let any = window.slopes.get(window.slopes.len() / 2).map_or(found.middle, |one| one.slope);
+        let slopes = &window.stairs.slopes;
+        let any = slopes.get(slopes.len() / 2).map_or(found.middle, |one| one.slope);
         if found.complete {
             self.window = window;
         }
@@ -195,25 +202,17 @@ impl CriticalSlopes {
 }
 
 impl Window {
-    fn new(before: u64, mut slopes: Vec<Critical>) -> Window {
-        slopes.sort_unstable_by(|one, other| {
-            one.slope.total_cmp(&other.slope).then(one.fall.cmp(&other.fall))
-        });
-        let mut lost = before;
-        let upto = slopes.iter().map(|one| {
-            lost += one.fall;
-            lost
-        });
-        let upto = upto.collect();
-        Window { before, slopes, upto }
+    fn new(before: u64, slopes: Vec<Critical>) -> Window {
+        Window { before, stairs: Staircase::new(before, slopes) }
     }
 
     fn at(&self, place: u64) -> Option<Step> {
         if place <= self.before {
             return None;
         }
-        let index = self.upto.partition_point(|&upto| upto < place);
-        let Critical { slope, fall } = *self.slopes.get(index)?;
-        Some(Step { slope, fall, before: self.upto[index] - fall })
+        let Staircase { slopes, upto } = &self.stairs;
+        let index = upto.partition_point(|&upto| upto < place);
+        let Critical { slope, fall } = *slopes.get(index)?;
+        Some(Step { slope, fall, before: upto[index] - fall })
     }
 }

@@ -51,6 +51,7 @@ pub mod slope_counting;
 pub mod certain_counts;
 pub mod certain_pairs;
 pub mod slope_selection;
+pub mod slope_gaps;
 pub mod slope_search;
 pub mod critical_slopes;
 pub mod theil_sen;

@@ -51,6 +51,8 @@ pub fn run_facts(job: &Job, tidy: &Tidy, as_of: NaiveDate) -> Result<RunFacts, E
             })
             .collect(),
         mapping: tidy.mapping.clone(),
+        applied: super::arrival::applied(tidy),
+        rpd_allowed: job.site.flags.duplicates_rpd,
     })
 }
 

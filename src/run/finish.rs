@@ -7,7 +7,7 @@ use super::facts::{run_facts, site_facts};
 use super::job::Job;
 use super::one_series::Computed;
 use crate::findings::{
-    DuplicateFinding, Findings, Fitted, Note, SeriesFinding, UsedValue, WellFinding,
+    Arrival, DuplicateFinding, Findings, Fitted, Note, SeriesFinding, UsedValue, WellFinding,
 };
 use crate::intake::Tidy;
 use crate::ledger::Told;
@@ -24,6 +24,7 @@ pub fn findings(
     job: &Job,
     tidy: &Tidy,
     as_of: NaiveDate,
+    arrival: Arrival,
     series: &[WellSeries],
     computed: Vec<Computed>,
 ) -> Result<Findings, Error> {
@@ -37,6 +38,7 @@ pub fn findings(
         run: run_facts(job, tidy, as_of)?,
         site: site_facts(job, as_of),
         notes: notes(job, tidy),
+        arrival,
         wells: wells(&all),
         series: all,
     })

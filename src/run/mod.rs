@@ -5,6 +5,7 @@ pub mod error;
 pub mod one_series;
 pub mod finish;
 pub mod facts;
+pub mod arrival;
 pub mod outputs;
 
 pub use error::Error;
@@ -37,6 +38,7 @@ pub fn run(job: &Job, watch: &dyn Watch) -> Result<Ran, Error> {
     watch.stage(Stage::Grouping, "");
     let series = group(&mut tidy, &job.site, as_of)?;
     decisions_that_match_nothing(job, &tidy, &series)?;
+    let arrival = arrival::arrival(job, &mut tidy, &series, as_of)?;
     let folder = outputs::folder(job, as_of);
     let rules = Rules::of(job, as_of);
     watch.stage(Stage::Fitting, "");
@@ -57,7 +59,7 @@ pub fn run(job: &Job, watch: &dyn Watch) -> Result<Ran, Error> {
     }
     let read = tidy.files.iter().map(|file| file.records).sum();
     tidy.ledger.balance(read)?;
-    let mut findings = finish::findings(job, &tidy, as_of, &series, computed)?;
+    let mut findings = finish::findings(job, &tidy, as_of, arrival, &series, computed)?;
     adjust_many(&mut findings);
     watch.stage(Stage::Writing, "");
     outputs::deliver(job, &tidy, findings, folder, watch)

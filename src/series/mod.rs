@@ -13,11 +13,17 @@ pub mod pairs;
 pub mod window;
 pub mod grouping;
 pub mod assemble;
+pub mod sentinels;
+pub mod quality;
+pub mod completeness;
 
+pub use completeness::{Completeness, completeness};
 pub use grouping::group;
 pub use key::SeriesKey;
 pub use pairs::DuplicatePair;
 pub use points::{DateValue, LeaveOut, MergeRules, Points, Window, points};
+pub use quality::{Quality, quality};
 pub use round::{Round, RoundRules};
+pub use sentinels::{Sentinel, sentinels};
 pub use well_series::{AppliedLimit, Candidate, SampleRole, WellSeries};
 pub use window::window_for;

@@ -8,6 +8,14 @@ use crate::site::RoundLength;
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub struct Round(i32);
 
+impl Round {
+    /// The round so many rounds before this one.
+    #[must_use]
+    pub fn back(self, rounds: i32) -> Self {
+        Self(self.0.saturating_sub(rounds))
+    }
+}
+
 /// How the site divides its years.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct RoundRules {

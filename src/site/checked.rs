@@ -173,6 +173,8 @@ pub struct ResultsRule {
     pub uncertainty: Option<Sigma>,
     /// The file's own words for sample types.
     pub sample_types: BTreeMap<String, SampleType>,
+    /// To what stage the files were validated and by whom, in the site file's words.
+    pub validation: Option<String>,
 }
 
 /// One analyte of the site file or a template.

@@ -2,7 +2,7 @@
 
 use super::clean::{shown, shown_short};
 use super::number::counted;
-use super::told_arrival;
+use super::{suspicion, told_arrival};
 use crate::findings::Note;
 use crate::ledger::Told;
 use crate::ledger::told::Expected;
@@ -155,6 +155,7 @@ pub fn detail(told: &Told) -> String {
         Told::SettingOffDefault { key, is } => {
             format!("setting {} is off its default: {}", shown(key), shown(is))
         }
+        Told::Suspected { what } => suspicion::detail(*what).into(),
         Told::LimitsDiffer => {
             "the non-detect's result and its reporting limit differ; the larger is its limit".into()
         }
@@ -232,6 +233,7 @@ pub fn weight(told: &Told) -> u8 {
         | Told::NoLimitColumns { .. }
         | Told::LimitTypeUnknown { .. }
         | Told::LimitUnit { .. }
+        | Told::Suspected { .. }
         | Told::Revised { .. } => 2,
         Told::AnalyteNotListed { .. }
         | Told::UnknownQualifier { .. }

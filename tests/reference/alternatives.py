@@ -73,7 +73,7 @@ def plateau(t, y, marks, start):
                 misfit += -mp.log(2 * mp.pi) / 2 - x[3] - z * z / 2
             else:
                 misfit += mp.log(upper_tail(-z if marks[i] == "<" else z))
-        return x[:3], misfit, None
+        return x[:3], misfit, bounded_errors(parts, x, y, marks)
     misfit = sum((y[i] - parts(x, i)[0]) ** 2 for i in range(len(t)))
     products = mp.matrix(3, 3)
     for i in range(len(t)):
@@ -84,6 +84,27 @@ def plateau(t, y, marks, start):
     inverse = products**-1
     errors = [mp.sqrt(misfit / (len(t) - 3) * inverse[k, k]) for k in range(3)]
     return x, misfit, errors
+
+
+def bounded_errors(parts, x, y, marks):
+    """From minus the second derivatives by height and scatter, those of the curve left out."""
+    bend = mp.matrix(4, 4)
+    for i, mark in enumerate(marks):
+        height, by = parts(x, i)
+
+        def one(f, scatter):
+            z = (y[i] - f) / mp.exp(scatter)
+            return -scatter - z * z / 2 if mark == "" else mp.log(upper_tail(-z if mark == "<" else z))
+
+        second = {d: -mp.diff(one, (height, x[3]), d) for d in ((2, 0), (1, 1), (0, 2))}
+        for k in range(3):
+            for l in range(3):
+                bend[k, l] += second[2, 0] * by[k] * by[l]
+            bend[k, 3] += second[1, 1] * by[k]
+            bend[3, k] += second[1, 1] * by[k]
+        bend[3, 3] += second[0, 2]
+    inverse = bend**-1
+    return [mp.sqrt(inverse[k, k]) for k in range(3)]
 
 
 def broken(t, y, marks, psi):
@@ -148,7 +169,7 @@ def main():
             for what, value in zip(("ln_plateau", "ln_height", "ln_rate"), x):
                 write(case, what, value)
             write(case, "plateau_misfit", misfit)
-            for what, value in zip(("plateau_error", "height_error", "rate_error"), errors or []):
+            for what, value in zip(("plateau_error", "height_error", "rate_error"), errors):
                 write(case, what, value)
             if any(m):
                 value, x = Problem([(yi, -1) for yi in y], m).maximum([mp.mpf(1), mp.mpf(2)])

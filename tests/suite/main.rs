@@ -3,9 +3,11 @@
 
 #[path = "../bench/mod.rs"]
 mod bench;
+mod arrival;
 mod cli;
 mod deliver;
 mod demo;
+mod fuzz;
 mod intake;
 mod intake_open;
 mod layouts;

@@ -15,9 +15,6 @@ pub(super) fn refuse(file: &SiteFile, problems: &mut Problems<'_>) {
     }
     not_built(file.vapour.as_ref(), problems);
     not_built(file.attainment.as_ref(), problems);
-    for rule in list(&file.results) {
-        not_built(rule.value.validation.as_ref(), problems);
-    }
 }
 
 fn not_built<T>(key: Option<&At<T>>, problems: &mut Problems<'_>) {

@@ -28,6 +28,7 @@ impl ResultsRule {
             ppb_in_water: false,
             uncertainty: None,
             sample_types: BTreeMap::new(),
+            validation: None,
         }
     }
 }
@@ -58,6 +59,7 @@ pub(super) fn check(at: &At<ResultsTable>, problems: &mut Problems<'_>) -> Resul
         ppb_in_water: copy(&table.ppb_in_water).unwrap_or(plain.ppb_in_water),
         uncertainty: copy(&table.uncertainty),
         sample_types: table.sample_types.as_ref().map(|at| at.value.values()).unwrap_or_default(),
+        validation: copy(&table.validation),
     }
 }
 

@@ -39,7 +39,8 @@ table! {
         uncertainty = "uncertainty": Sigma;
         /// The files' own words for sample types: { "7" = "duplicate" }.
         sample_types = "sample-types": Keyed<String, SampleType>;
-        /// Not built yet. To what stage the files were validated, and by whom.
+        /// To what stage the files were validated, and by whom; printed in the statement on
+        /// quality.
         validation = "validation": String;
     }
 }

@@ -10,6 +10,7 @@ pub mod table_columns;
 pub mod statistics;
 pub mod refits;
 pub mod terms;
+pub mod suspicions;
 
 use crate::terms::folded;
 use crate::terms::nearest as nearest_name;
@@ -38,6 +39,8 @@ pub enum Kind {
     NoDate,
     /// A column of a table.
     Column,
+    /// Something suspected, or told as a fact, on arrival.
+    Suspicion,
     /// A word that pages and the documentation use.
     Term,
     /// A statistical procedure.
@@ -55,6 +58,7 @@ impl Kind {
         Self::NoDate,
         Self::Outcome,
         Self::Reason,
+        Self::Suspicion,
         Self::Term,
         Self::Statistic,
         Self::Column,
@@ -73,6 +77,7 @@ impl Kind {
             Self::NoRate => "reason for having no rate",
             Self::NoDate => "reason for having no date",
             Self::Column => "column",
+            Self::Suspicion => "sentinel on arrival",
             Self::Term => "term",
             Self::Statistic => "procedure",
         }
@@ -91,6 +96,7 @@ impl Kind {
             Self::NoRate => "Why there is no rate",
             Self::NoDate => "Why there is no date",
             Self::Column => "Columns",
+            Self::Suspicion => "Sentinels on arrival",
             Self::Term => "Terms",
             Self::Statistic => "Procedures",
         }
@@ -118,6 +124,7 @@ pub struct Entry {
 #[must_use]
 pub fn all() -> Vec<Entry> {
     let mut entries = coded::entries();
+    entries.extend(suspicions::entries());
     entries.extend(terms::TERMS);
     entries.extend(statistics::STATISTICS);
     entries.extend(refits::REFITS);

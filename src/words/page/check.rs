@@ -2,9 +2,11 @@
 
 use std::collections::BTreeMap;
 
-use super::{PageOptions, account, heading};
-use crate::findings::{LedgerRow, Note, RunFacts, SiteFacts};
-use crate::ledger::Outcome;
+use super::read_as::read_as;
+use super::to_do::to_do;
+use super::{PageOptions, account, arrival, heading};
+use crate::findings::{Arrival, LedgerRow, Note, RunFacts, SiteFacts};
+use crate::ledger::{Outcome, Told};
 use crate::words::caution::caution;
 use crate::words::clean::{shell_word, shown, shown_short};
 use crate::words::fate;
@@ -14,7 +16,11 @@ use crate::words::number::{count, counted};
 /// Longest text of a cell that an example quotes.
 const QUOTED: usize = 40;
 /// Notes that the page shows.
-const NOTES_SHOWN: usize = 60;
+const NOTES_SHOWN: usize = 20;
+/// Files that the page lists.
+const FILES_SHOWN: usize = 8;
+/// Reasons of one outcome that the first screen names.
+const REASONS_IN_SHORT: usize = 5;
 
 /// What a check found out.
 #[derive(Clone, Copy, Debug)]
@@ -25,6 +31,8 @@ pub struct CheckFacts<'a> {
     pub site: &'a SiteFacts,
     /// What is told once.
     pub notes: &'a [Note],
+    /// What was found out about the data before any fit.
+    pub arrival: &'a Arrival,
     /// Some records of each outcome and reason but `used`, in the order of the ledger.
     pub examples: &'a [LedgerRow],
 }
@@ -44,7 +52,7 @@ pub fn examples(rows: impl IntoIterator<Item = LedgerRow>, each: usize) -> Vec<L
         .collect()
 }
 
-/// The page.
+/// The page: what was read, what was not used and what to do now stand first.
 #[must_use]
 pub fn check(facts: &CheckFacts<'_>, options: &PageOptions<'_>) -> String {
     let mut lines = Lines::new(options.width, options.color);
@@ -52,24 +60,48 @@ pub fn check(facts: &CheckFacts<'_>, options: &PageOptions<'_>) -> String {
     lines.heading("What was read");
     account::read(&mut lines, facts.run);
     files(&mut lines, facts.run);
-    columns(&mut lines, facts.run);
+    not_used_in_short(&mut lines, facts.run);
+    let next = format!("ebbwell review {}", shell_word(options.site_argument));
+    to_do(&mut lines, facts.run, facts.arrival, &next);
+    arrival::suspicions(&mut lines, facts.run, facts.arrival);
+    arrival::quality(&mut lines, facts.run, facts.arrival);
+    arrival::completeness(&mut lines, facts.arrival);
     not_used(&mut lines, facts);
-    account::notes(&mut lines, facts.notes, NOTES_SHOWN);
+    read_as(&mut lines, facts.run);
+    let notes: Vec<Note> = facts.notes.iter().filter(|n| !is_said_above(n)).cloned().collect();
+    account::notes(&mut lines, &notes, NOTES_SHOWN);
     lines.blank();
     if let Some(folder) = options.folder {
         lines.line(&format!("Written to  {}", shown(folder)));
     }
-    lines.line(&format!("Next        ebbwell review {}", shell_word(options.site_argument)));
     lines.blank();
     lines.paragraph(&caution(facts.site), 0);
     lines.finish()
 }
 
-/// One line a file.
+/// Whether a section of the page says it already.
+fn is_said_above(note: &Note) -> bool {
+    matches!(
+        note.told,
+        Told::Suspected { .. }
+            | Told::AnalyteJoined { .. }
+            | Told::WellAlias { .. }
+            | Told::FractionAssumed { .. }
+            | Told::Converted { .. }
+    )
+}
+
+/// One line a file, the largest first where there are many.
 fn files(lines: &mut Lines, run: &RunFacts) {
-    let rows: Vec<Vec<String>> = run
-        .files
-        .iter()
+    let mut places: Vec<usize> = (0..run.files.len()).collect();
+    let left = places.len().saturating_sub(FILES_SHOWN);
+    if left > 0 {
+        places.sort_by_key(|&at| std::cmp::Reverse(run.files[at].records));
+        places.truncate(FILES_SHOWN);
+    }
+    let rows: Vec<Vec<String>> = places
+        .into_iter()
+        .map(|at| &run.files[at])
         .map(|file| {
             let blank = match file.blank_lines {
                 0 => String::new(),
@@ -83,33 +115,38 @@ fn files(lines: &mut Lines, run: &RunFacts) {
         })
         .collect();
     lines.rows(&rows, &[Align::Left, Align::Right, Align::Left], 4);
+    if left > 0 {
+        lines.aside(&format!("and {}; run.json lists them all", counted(left, "file", "files")), 4);
+    }
 }
 
-/// Which header was read as which column: one line for all files that agree.
-fn columns(lines: &mut Lines, run: &RunFacts) {
-    let mut of_table: BTreeMap<(&str, &str), Vec<String>> = BTreeMap::new();
-    for mapped in run.mapping.iter().filter(|mapped| !mapped.column.is_empty()) {
-        let read = of_table.entry((&mapped.file, &mapped.sheet)).or_default();
-        read.push(pair(&mapped.header, &mapped.column));
-    }
-    let mut by_mapping: BTreeMap<Vec<String>, Vec<String>> = BTreeMap::new();
-    for ((file, sheet), read) in of_table {
-        let table = if sheet.is_empty() { file.to_owned() } else { format!("{file}:{sheet}") };
-        by_mapping.entry(read).or_default().push(table);
-    }
-    if by_mapping.is_empty() {
+/// One line an outcome: its reasons in short.
+fn not_used_in_short(lines: &mut Lines, run: &RunFacts) {
+    let outcomes: Vec<Outcome> =
+        Outcome::ALL.iter().copied().filter(|outcome| *outcome != Outcome::Used).collect();
+    if outcomes.iter().all(|outcome| account::total(run, *outcome) == 0) {
         return;
     }
-    lines.heading("Columns");
-    for (read, files) in by_mapping {
-        let files: Vec<String> = files.iter().map(|file| shown(file)).collect();
-        lines.hanging(&format!("{}: {}", files.join(", "), read.join(", ")), 2, 4);
+    lines.heading("What was not used");
+    for outcome in outcomes.into_iter().rev() {
+        let reasons = account::reasons(run, outcome);
+        if reasons.is_empty() {
+            continue;
+        }
+        let left = reasons.len().saturating_sub(REASONS_IN_SHORT);
+        let mut said: Vec<String> = reasons
+            .iter()
+            .take(REASONS_IN_SHORT)
+            .map(|reason| format!("{} {}", count(reason.records), reason.reason))
+            .map(|text| shown(&text))
+            .collect();
+        if left > 0 {
+            said.push(counted(left, "more reason", "more reasons"));
+        }
+        let total = count(account::total(run, outcome));
+        let what = fate::outcome(outcome);
+        lines.hanging(&format!("{total} {what}: {}", said.join(", ")), 2, 4);
     }
-}
-
-/// `Sample Date = date`, or the name alone where both agree.
-fn pair(header: &str, column: &str) -> String {
-    if header == column { shown(column) } else { format!("{} = {column}", shown(header)) }
 }
 
 /// Every outcome but used: its reasons, each with examples and what to do.
@@ -148,7 +185,7 @@ fn example(row: &LedgerRow) -> String {
     let place = if row.sheet.is_empty() {
         format!("{}:{}", shown(&row.file), shown(&row.record))
     } else {
-        format!("{}:{}!{}", shown(&row.file), shown(&row.sheet), shown(&row.record))
+        format!("{}, {}:{}", shown(&row.file), shown(&row.sheet), shown(&row.record))
     };
     let whose: Vec<String> =
         [&row.well, &row.analyte, &row.date, &row.reported, &row.unit, &row.qualifier]

@@ -118,14 +118,15 @@ fn run_json_lists_inputs_settings_decisions_and_outputs() {
 
 #[test]
 fn pages_have_a_json_form() {
-    let Findings { run, site, notes, series, wells } = sample::findings();
+    let Findings { run, site, notes, arrival, series, wells } = sample::findings();
     let row = LedgerRow { reported: "O.5".into(), outcome: "set-aside", ..LedgerRow::default() };
-    let facts = CheckFacts { run: &run, site: &site, notes: &notes, examples: &[row] };
+    let facts =
+        CheckFacts { run: &run, site: &site, notes: &notes, arrival: &arrival, examples: &[row] };
     let check = read(&check_json(&facts));
     assert_eq!(check["examples"][0]["reported"], "O.5");
     assert_eq!(check["records"][0]["outcome"], "used");
     assert!(check["caution"].is_string());
-    let findings = Findings { run, site, notes, series, wells };
+    let findings = Findings { run, site, notes, arrival, series, wells };
     let mixed = findings.series.iter().find(|s| s.key.well == "MW-12").expect("the mixed one");
     let show = read(&show_json(&findings, mixed));
     assert_eq!(show["values"].as_array().map(Vec::len), Some(mixed.values.len()));

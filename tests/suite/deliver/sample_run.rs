@@ -2,7 +2,8 @@
 
 use super::sample::{date, decline, mixed, rise, too_few, undecided, undetected};
 use ebbwell::findings::{
-    FileFacts, Findings, Note, OutcomeCount, RunFacts, SeriesFinding, SiteFacts, WellFinding,
+    Arrival, FileFacts, Findings, Note, OutcomeCount, RunFacts, SeriesFinding, SiteFacts,
+    WellFinding,
 };
 use ebbwell::ledger::Told;
 use ebbwell::site::Role;
@@ -35,6 +36,8 @@ pub fn run() -> RunFacts {
         off_default: Vec::new(),
         decisions: Vec::new(),
         mapping: Vec::new(),
+        applied: Vec::new(),
+        rpd_allowed: 30.0,
     }
 }
 
@@ -81,6 +84,7 @@ pub fn findings() -> Findings {
             },
             Note { told: Told::AveragedOf { n: 2 }, records: 2 },
         ],
+        arrival: Arrival::nothing(),
         series,
         wells,
     }

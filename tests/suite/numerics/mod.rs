@@ -30,6 +30,7 @@ mod residuals_and_deletion;
 mod rounds;
 mod seasonal_trends;
 mod slopes_of_pairs;
+mod small_systems;
 mod trends;
 mod without_a_point;
 mod worked_examples;

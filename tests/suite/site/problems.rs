@@ -297,7 +297,6 @@ fn work_that_is_not_built_is_an_error_that_says_so() {
         "[[chain]]\nname = \"ethenes\"\nmembers = [\"PCE\", \"TCE\"]\nyields = [1]",
         "[vapour]\ntemperature = \"15 C\"",
         "[attainment]\nstatistic = \"each result\"\nrounds = 8\ncitation = \"Order 7\"",
-        "[[results]]\nfiles = \"*\"\nvalidation = \"stage 2\"",
     ];
     for blocks in cases {
         let text = format!("[site]\nname = \"x\"\n{blocks}\n");

@@ -1,6 +1,7 @@
 //! The table that `explain` and the documentation read is complete.
 
 use ebbwell::deliver::tables;
+use ebbwell::ledger::told::Suspicion;
 use ebbwell::ledger::{Merged, NonResult, Outcome, QualityControl, SetAside, UsedAs};
 use ebbwell::terms::{
     ChoiceKind, FlagCode, Method, Model, Pace, Verdict, WhyNoDate, WhyNoModel, WhyNoRate,
@@ -21,6 +22,7 @@ fn every_word_of_every_closed_list_is_explained() {
         .chain(codes(Kind::Reason, Merged::ALL.iter().map(|v| v.code()).collect()))
         .chain(codes(Kind::Reason, NonResult::ALL.iter().map(|v| v.code()).collect()))
         .chain(codes(Kind::Reason, QualityControl::ALL.iter().map(|v| v.code()).collect()))
+        .chain(codes(Kind::Suspicion, Suspicion::ALL.iter().map(|v| v.code()).collect()))
         .chain(codes(Kind::Reason, SetAside::ALL.iter().map(|v| v.code()).collect()));
     let wanted = wanted
         .chain(codes(Kind::Statistic, Model::ALL.iter().map(|v| v.code()).collect()))

@@ -115,6 +115,7 @@ fn text_from_files_cannot_steer_a_terminal() {
         run: &findings.run,
         site: &findings.site,
         notes: &findings.notes,
+        arrival: &findings.arrival,
         examples: &[row],
     };
     for page in [
@@ -147,6 +148,7 @@ fn the_check_page_shows_where_a_record_stands_and_what_to_do() {
         run: &findings.run,
         site: &findings.site,
         notes: &findings.notes,
+        arrival: &findings.arrival,
         examples: &some,
     };
     let page = check(&facts, &options(90, false));
