@@ -94,6 +94,19 @@ fn what_is_ambiguous_is_refused_with_the_key_that_settles_it() {
             vec!["lines 1 and 2", "\"Benzene\" and \"Toluene\""],
         ),
         (
+            "Benzene (ug/L)\nToluene,2024-03-05,2024-06-05\nMW-1,4.2,4\n",
+            vec!["lines 1 and 2", "\"Benzene\" and \"Toluene\""],
+        ),
+        (
+            "Well,2024-03-05,2024-06-05\nBenzene (ug/L)\nMW-1,4.2,4\nMW-2\nOctarine\nMW-1,5,6\n",
+            vec!["line 5, \"Octarine\"", "lines 3 and 6"],
+        ),
+        (
+            "Benzene (ug/L)\nWell,2024-03-05,2024-06-05\nMW-1,4.2,4\nOctarine\n\
+             Well,2024-03-05,2024-06-05\nMW-1,5,6\n",
+            vec!["line 5 heads", "where the analyte is"],
+        ),
+        (
             "Well,Date,Benzene (ug/L),Toluene (mg/L),Qualifier\nMW-1,2024-03-05,4.2,4,U\n",
             vec!["\"Qualifier\"", "0.5 U"],
         ),
@@ -139,4 +152,14 @@ fn a_name_at_the_left_is_not_written_into_more_records_than_memory_holds() {
     let cells = ",5".repeat(2_000);
     let text = format!("Benzene (ug/L)\nWell{heads}\n{}{cells}\n", "x".repeat(500_000));
     assert!(refusal(text.as_bytes(), &site("")).contains("many times as long"));
+}
+
+#[test]
+fn a_later_block_may_have_columns_that_the_first_has_not() {
+    let text = "Well,Date,Benzene (ug/L)\nMW-1,2024-03-05,4.2\nWell,Date,Sample ID,Toluene (mg/L)\n\
+                MW-1,2024-03-05,S-7,1\n";
+    let rows = ledger(text.as_bytes(), &site(""));
+    let said: Vec<(&str, &str)> =
+        rows.iter().map(|row| (row.analyte.as_str(), row.sample_id.as_str())).collect();
+    assert_eq!(said, [("Benzene", ""), ("Toluene", "S-7")]);
 }
