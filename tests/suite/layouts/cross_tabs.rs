@@ -1,6 +1,6 @@
 //! Cross-tabs: which are read, how their cells are addressed, and why others are refused.
 
-use super::{ledger, read_bytes, records, refusal, site};
+use super::{ledger, read_bytes, records, refusal, site, told};
 
 fn of(text: &str) -> Vec<String> {
     records(text.as_bytes(), &site(""))
@@ -22,6 +22,14 @@ fn each_cell_is_a_record_with_its_address_and_empty_ones_are_counted() {
     let expected =
         [("Well", "well"), ("2024-03-05 and 1 more across", "date"), ("Benzene", "analyte")];
     assert_eq!(mapped, expected);
+}
+
+#[test]
+fn a_footnote_is_told_and_no_record() {
+    let text = "Benzene (ug/L)\nWell,2024-03-05,2024-06-05\nMW-1,4.2,4\nAll by North Lab\n";
+    assert_eq!(of(text).len(), 2);
+    let told = told(text.as_bytes(), &site(""));
+    assert!(told.iter().any(|told| told.contains("1 line") && told.contains("North")), "{told:?}");
 }
 
 #[test]

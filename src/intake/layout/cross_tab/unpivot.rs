@@ -175,6 +175,11 @@ impl Unpivot {
             match &block {
                 Some(head) => {
                     titles.row(line.line, head, &own)?;
+                    if let ([alone], Some(inside)) = (&filled[..], head.columns.first())
+                        && alone < inside
+                    {
+                        out.beside.push(own[*alone].clone());
+                    }
                     out.row(line, head, titles.analyte()?, titles.unit.as_deref());
                     out.bytes[0] += line.cells.as_slice().len();
                     if out.bytes[1] > FREE_BYTES + MADE_A_BYTE * out.bytes[0] {
