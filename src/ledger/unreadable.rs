@@ -127,6 +127,15 @@ pub enum CrossTabProblem {
         /// What they say.
         titles: [String; 2],
     },
+    /// A line between rows of a block that seems to be a title and names no known analyte.
+    LostTitle {
+        /// The line.
+        line: u64,
+        /// What it says.
+        text: String,
+        /// Two rows, above and below it, with the same cells at the left.
+        repeats: [u64; 2],
+    },
     /// Names at the left so long that writing them into each record would take all memory.
     LongNames {
         /// The row at which reading stopped.

@@ -128,7 +128,7 @@ pub fn detail(told: &Told) -> String {
             format!("{} is no results file and was left alone", shown(file))
         }
         Told::LinesBesideTable { table, lines, first } => format!(
-            "{}: {} above or beside the table hold no record (the first says `{}`)",
+            "{}: {} above or beside the table, without a record (the first says `{}`)",
             shown(table),
             counted(*lines, "line", "lines"),
             shown_short(first, QUOTED)

@@ -112,6 +112,14 @@ fn cross_tab(problem: &CrossTabProblem) -> String {
             shown_short(&titles[0], CELL),
             shown_short(&titles[1], CELL),
         ),
+        CrossTabProblem::LostTitle { line, text, repeats } => format!(
+            "line {line}, {:?}, stands between lines {} and {}, which begin alike, so it seems to \
+             name another analyte; expected a name that the site file lists, or one with its unit, \
+             such as Benzene (ug/L)",
+            shown_short(text, CELL),
+            repeats[0],
+            repeats[1],
+        ),
         CrossTabProblem::LongNames { line } => format!(
             "up to line {line} the names at the left are many times as long as the results beside \
              them; expected names of wells and analytes. Take long texts out of the table"

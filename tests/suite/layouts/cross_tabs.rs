@@ -1,6 +1,6 @@
 //! Cross-tabs: which are read, how their cells are addressed, and why others are refused.
 
-use super::{ledger, read_bytes, records, refusal, site};
+use super::{ledger, read_bytes, records, refusal, site, told};
 
 fn of(text: &str) -> Vec<String> {
     records(text.as_bytes(), &site(""))
@@ -22,6 +22,14 @@ fn each_cell_is_a_record_with_its_address_and_empty_ones_are_counted() {
     let expected =
         [("Well", "well"), ("2024-03-05 and 1 more across", "date"), ("Benzene", "analyte")];
     assert_eq!(mapped, expected);
+}
+
+#[test]
+fn a_footnote_is_told_and_no_record() {
+    let text = "Benzene (ug/L)\nWell,2024-03-05,2024-06-05\nMW-1,4.2,4\nAll by North Lab\n";
+    assert_eq!(of(text).len(), 2);
+    let told = told(text.as_bytes(), &site(""));
+    assert!(told.iter().any(|told| told.contains("1 line") && told.contains("North")), "{told:?}");
 }
 
 #[test]
@@ -94,6 +102,19 @@ fn what_is_ambiguous_is_refused_with_the_key_that_settles_it() {
             vec!["lines 1 and 2", "\"Benzene\" and \"Toluene\""],
         ),
         (
+            "Benzene (ug/L)\nToluene,2024-03-05,2024-06-05\nMW-1,4.2,4\n",
+            vec!["lines 1 and 2", "\"Benzene\" and \"Toluene\""],
+        ),
+        (
+            "Well,2024-03-05,2024-06-05\nBenzene (ug/L)\nMW-1,4.2,4\nMW-2\nOctarine\nMW-1,5,6\n",
+            vec!["line 5, \"Octarine\"", "lines 3 and 6"],
+        ),
+        (
+            "Benzene (ug/L)\nWell,2024-03-05,2024-06-05\nMW-1,4.2,4\nOctarine\n\
+             Well,2024-03-05,2024-06-05\nMW-1,5,6\n",
+            vec!["line 5 heads", "where the analyte is"],
+        ),
+        (
             "Well,Date,Benzene (ug/L),Toluene (mg/L),Qualifier\nMW-1,2024-03-05,4.2,4,U\n",
             vec!["\"Qualifier\"", "0.5 U"],
         ),
@@ -139,4 +160,14 @@ fn a_name_at_the_left_is_not_written_into_more_records_than_memory_holds() {
     let cells = ",5".repeat(2_000);
     let text = format!("Benzene (ug/L)\nWell{heads}\n{}{cells}\n", "x".repeat(500_000));
     assert!(refusal(text.as_bytes(), &site("")).contains("many times as long"));
+}
+
+#[test]
+fn a_later_block_may_have_columns_that_the_first_has_not() {
+    let text = "Well,Date,Benzene (ug/L)\nMW-1,2024-03-05,4.2\nWell,Date,Sample ID,Toluene (mg/L)\n\
+                MW-1,2024-03-05,S-7,1\n";
+    let rows = ledger(text.as_bytes(), &site(""));
+    let said: Vec<(&str, &str)> =
+        rows.iter().map(|row| (row.analyte.as_str(), row.sample_id.as_str())).collect();
+    assert_eq!(said, [("Benzene", ""), ("Toluene", "S-7")]);
 }

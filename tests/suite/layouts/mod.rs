@@ -1,5 +1,6 @@
 //! Layouts: workbooks and cross-tabs become the same records as long text.
 
+mod any_cells;
 mod by_hand;
 mod cross_tabs;
 mod grids;

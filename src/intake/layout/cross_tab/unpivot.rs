@@ -45,6 +45,10 @@ struct Titles {
     unit: Option<String>,
     /// Whether rows of a block have come since.
     used: bool,
+    /// What stands at the left of those rows, each with its line.
+    rows: BTreeMap<String, u64>,
+    /// The last of those rows that says one thing and has no result.
+    lone: Option<(u64, String)>,
 }
 
 impl Titles {
@@ -54,6 +58,40 @@ impl Titles {
         }
         self.analytes.extend(title.analyte.map(|named| (line, named)));
         self.unit = title.unit.or(self.unit.take());
+    }
+
+    /// An analyte in the corner is one more title.
+    fn corner(&mut self, head: &Head) {
+        self.analytes.extend(head.corner.clone().map(|named| (head.line, named)));
+    }
+
+    /// Looks at a row of the block. A line that says one thing and has no result may be a well
+    /// without results, or a title whose analyte is not known; where the rows below it repeat those
+    /// above it, it is the second, and nothing says which analyte they are of.
+    fn row(&mut self, line: u64, head: &Head, own: &[String]) -> Result<(), CrossTabProblem> {
+        self.used = true;
+        if head.across == Column::Analyte || head.left.contains_key(&Column::Analyte) {
+            return Ok(());
+        }
+        let mut filled = own.iter().enumerate().filter(|(_, cell)| !cell.is_empty());
+        let Some((at, first)) = filled.next() else { return Ok(()) };
+        if filled.next().is_none() && head.columns.first().is_some_and(|inside| at < *inside) {
+            self.lone = Some((line, first.clone()));
+            return Ok(());
+        }
+        let left: Vec<&str> =
+            head.left.values().filter_map(|at| own.get(*at)).map(String::as_str).collect();
+        let before = self.rows.insert(left.join("\u{1f}"), line);
+        match (before, &self.lone) {
+            (Some(before), Some((lone, text))) if before < *lone => {
+                Err(CrossTabProblem::LostTitle {
+                    line: *lone,
+                    text: text.clone(),
+                    repeats: [before, line],
+                })
+            }
+            _ => Ok(()),
+        }
     }
 
     /// The one analyte named above the block.
@@ -83,15 +121,13 @@ impl Unpivot {
             }
         }
         let Some(first) = first else { return Ok(None) };
-        let sides: Vec<Column> =
-            first.left.keys().copied().filter(|column| !KEYS.contains(column)).collect();
         let mut out = Self {
             lines: Vec::new(),
             empty: 0,
             across: first.across,
             beside: Vec::new(),
             described: Vec::new(),
-            sides,
+            sides: Vec::new(),
             bytes: [0, 0],
         };
         let mut titles = Titles::default();
@@ -107,6 +143,12 @@ impl Unpivot {
                 && let Some(found) = head(lines, at - 1, context)?
             {
                 at += usize::from(!found.units.is_empty());
+                // A title speaks for one block: the next one has its own or none.
+                if titles.used {
+                    titles = Titles::default();
+                }
+                titles.corner(&found);
+                titled.extend(found.corner.iter().map(|named| named.name.clone()));
                 waiting = Some(found);
                 continue;
             }
@@ -124,11 +166,20 @@ impl Unpivot {
             }
             if let Some(head) = waiting.take() {
                 let named = titles.analyte()?.is_some();
-                block = Some(head.settle(named, &lines[at - 1..], context)?);
+                let head = head.settle(named, &lines[at - 1..], context)?;
+                let more = head.left.keys().filter(|c| !KEYS.contains(c) && !out.sides.contains(c));
+                let more: Vec<Column> = more.copied().collect();
+                out.sides.extend(more);
+                block = Some(head);
             }
             match &block {
                 Some(head) => {
-                    titles.used = true;
+                    titles.row(line.line, head, &own)?;
+                    if let ([alone], Some(inside)) = (&filled[..], head.columns.first())
+                        && alone < inside
+                    {
+                        out.beside.push(own[*alone].clone());
+                    }
                     out.row(line, head, titles.analyte()?, titles.unit.as_deref());
                     out.bytes[0] += line.cells.as_slice().len();
                     if out.bytes[1] > FREE_BYTES + MADE_A_BYTE * out.bytes[0] {
@@ -155,7 +206,6 @@ impl Unpivot {
         let cell = |at: usize| line.cells.get(at).unwrap_or_default().trim();
         let left = |column: Column| head.left.get(&column).map_or("", |at| cell(*at));
         let taken: BTreeSet<usize> = head.left.values().chain(&head.unused).copied().collect();
-        let title = head.corner.as_ref().or(title);
         let analyte = match (head.left.contains_key(&Column::Analyte), title) {
             (true, _) => named(left(Column::Analyte)),
             (false, Some(title)) => title.clone(),
@@ -169,7 +219,7 @@ impl Unpivot {
             .collect();
         let width = line.cells.len().max(head.columns.last().map_or(0, |last| last + 1));
         for at in (0..width).filter(|at| !taken.contains(at)) {
-            let across = head.columns.contains(&at);
+            let across = head.columns.binary_search(&at).is_ok();
             let merged = line.filled.iter().any(|f| f.column as usize == at);
             // A merged result is one result: only words such as DRY stand for every cell of it.
             let digits = cell(at).bytes().any(|b| b.is_ascii_digit());
@@ -178,7 +228,7 @@ impl Unpivot {
                 continue;
             }
             let heads = if across { head.cells[at].as_str() } else { "" };
-            let over = named(heads);
+            let over = named(if head.across == Column::Analyte { heads } else { "" });
             let (shown, own_unit) = match head.across {
                 Column::Analyte => (&over, head.units.get(&at).unwrap_or(&over.unit)),
                 _ => (&analyte, &analyte.unit),
