@@ -4,7 +4,7 @@ use crate::fit::Fit;
 use crate::judge::Facts;
 use crate::numerics::rounds::Dates;
 use crate::numerics::{Plan, median_spacing, rounds_to_decisive, rounds_to_level};
-use crate::terms::{MoreRounds, years_between};
+use crate::terms::MoreRounds;
 
 /// The chance with which the next rounds are to settle it.
 const POWER: f64 = 0.8;
@@ -18,11 +18,10 @@ pub fn more_rounds(facts: &Facts<'_>, fit: &Fit, t: &[f64]) -> MoreRounds {
     let plan = Plan { step, confidence: fit.confidence, power: POWER };
     let half_yearly = Plan { step: HALF_YEARLY, ..plan };
     let dates = Dates::of(t);
-    let required = facts.limit().zip(facts.series.goal_date).and_then(|(limit, goal)| {
-        let years = years_between(fit.used.last, goal).0;
-        let level = fit.level_now();
-        (level > limit && years > 0.0).then(|| (level / limit).ln() / years)
-    });
+    let required = facts
+        .limit()
+        .zip(facts.series.goal_date)
+        .and_then(|(limit, goal)| fit.required_rate(limit, goal));
     MoreRounds {
         decisive: rounds_to_decisive(t, &fit.line, &plan),
         decisive_half_yearly: rounds_to_decisive(t, &fit.line, &half_yearly),

@@ -120,6 +120,17 @@ impl Fit {
         self.line.fitted(self.years(date)).exp()
     }
 
+    /// The rate that would meet the limit by the goal date from the level at the last used date.
+    ///
+    /// # None
+    /// The level meets the limit, or the goal is not after the last used date.
+    #[must_use]
+    pub fn required_rate(&self, limit: f64, goal: NaiveDate) -> Option<f64> {
+        let years = years_between(self.used.last, goal).0;
+        let level = self.level_now();
+        (level > limit && years > 0.0).then(|| (level / limit).ln() / years)
+    }
+
     /// The fitted median at the last used date.
     #[must_use]
     pub fn level_now(&self) -> f64 {

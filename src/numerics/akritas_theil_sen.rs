@@ -45,7 +45,7 @@ pub struct AkritasTheilSen {
 /// `confidence` is a probability.
 ///
 /// # Limits
-/// Up to about 300 points all slopes are held in memory; above, memory is of order n. The variance
+/// Up to about 140 points all slopes are held in memory; above, memory is of order n. The variance
 /// is taken anew at each b since it depends on it: simulated (n 8 to 100, up to 70 % non-detects,
 /// 4,000 runs a cell), a nominal 90 % covers 0.89 to 0.95 so, no tail over 0.061. With the variance
 /// at the slope one tail reaches 0.11, with that at b = 0 a steep series covers 0.95 to 1.00.

@@ -14,7 +14,7 @@ use crate::ledger::Told;
 use crate::numerics::normal;
 use crate::series::pairs::Agreement;
 use crate::series::{DateValue, WellSeries};
-use crate::terms::{PerYear, Reading, Verdict, years_between};
+use crate::terms::{PerYear, Reading, Verdict};
 
 /// Findings from everything that was computed, sorted as every table is.
 ///
@@ -125,9 +125,9 @@ fn series_finding(
         reach_date_mean: shown.mean,
         exceed_date: shown.exceed,
         exceed_earliest: shown.exceed_earliest,
-        required_rate_per_year: fit.as_ref().and_then(|fit| {
-            required_rate(fit.level_now(), limit?, fit.used.last, series.goal_date?)
-        }),
+        required_rate_per_year: fit
+            .as_ref()
+            .and_then(|fit| fit.required_rate(limit?, series.goal_date?)),
         alternative_model: doubts.alternative.map(|alternative| alternative.model.code()),
         alternative_date: doubts.alternative.and_then(|alternative| alternative.date),
         rounds_to_decisive: doubts.rounds.decisive,
@@ -152,12 +152,6 @@ fn series_finding(
         most_telling: doubts.most_telling,
         more_rounds: doubts.rounds,
     })
-}
-
-/// The rate that would meet the limit by the goal date from the level at the last used date.
-fn required_rate(level_now: f64, limit: f64, last: NaiveDate, goal: NaiveDate) -> Option<f64> {
-    let years = years_between(last, goal).0;
-    (level_now > limit && years > 0.0).then(|| (level_now / limit).ln() / years)
 }
 
 fn used_value(value: &DateValue, fit: Option<&crate::fit::Fit>, tidy: &Tidy) -> UsedValue {

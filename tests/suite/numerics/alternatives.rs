@@ -213,6 +213,14 @@ fn a_fall_that_rests_on_the_first_date_has_no_rate() {
     let t: Vec<f64> = (0..16).map(f64::from).collect();
     let spike = Series::reported(&t, "900 10 11 9 12 10 9 11 10 12 9 10 11 9 10 11");
     assert!(matches!(compared(&spike).plateau, Err(Dropped::NotConverged { .. })));
+
+    // With the second date a thousandth over the others there is a best rate, known to nothing.
+    let mut close = spike;
+    close.y[1] = close.y[2..].iter().sum::<f64>() / 14.0 + 1e-3;
+    assert!(matches!(compared(&close).plateau, Err(Dropped::NotConverged { .. })));
+    // With half as much again there is one that means something.
+    close.y[1] += 0.4;
+    assert!(compared(&close).plateau.is_ok());
 }
 
 /// Source: each model's own formula, turned round.

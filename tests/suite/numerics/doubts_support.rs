@@ -1,4 +1,4 @@
-//! The invented series, and what R says of their residuals.
+//! The invented series, and what was computed of their residuals with 40 digits.
 
 use std::collections::BTreeMap;
 

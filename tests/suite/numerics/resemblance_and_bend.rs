@@ -40,6 +40,33 @@ fn w03_car1() {
     assert_relative_eq!(by_day.inflation, test.inflation, max_relative = SEARCHED);
 }
 
+/// Source: `tests/reference/invented-diagnostics.csv`: the whole matrix of correlations, 40 digits.
+#[test]
+fn car1_of_invented_series_agrees_with_forty_digits() {
+    let mut seen = [0, 0];
+    for (name, series) in &invented() {
+        if !series.points().all_measured() {
+            continue;
+        }
+        let test = faded(&series.t, &series.y);
+        let Some(phi) = expected(name, "car1_phi") else {
+            assert_eq!((test.phi, test.p), (0.0, 1.0), "{name}");
+            seen[0] += 1;
+            continue;
+        };
+        let figure = |quantity| expected(name, quantity).expect("a figure beside φ");
+        // The likelihood is flat at its maximum: half of its digits are left to φ.
+        assert_relative_eq!(test.phi, phi, max_relative = 1e-5);
+        let likelihood = figure("car1_log_likelihood");
+        assert_relative_eq!(test.log_likelihood, likelihood, max_relative = 1e-11);
+        assert_relative_eq!(test.slope, figure("car1_slope"), max_relative = 1e-6);
+        assert_relative_eq!(test.slope_error, figure("car1_slope_error"), max_relative = 1e-6);
+        assert_relative_eq!(test.inflation, figure("car1_inflation"), max_relative = 1e-6);
+        seen[1] += 1;
+    }
+    assert_eq!(seen, [2, 7]);
+}
+
 /// The log-likelihood of a line with correlations φ^|tᵢ − tⱼ|, from the whole matrix; the slope,
 /// its standard error, and the inflation from the definition.
 fn whole_matrix(t: &[f64], y: &[f64], phi: f64) -> [f64; 4] {
@@ -237,7 +264,7 @@ fn w17_bends_upwards() {
     printed(bent(&Series::reported(&t, c)).t, 17.927, 3);
 }
 
-/// Source: `tests/reference/invented-diagnostics.csv`: R 4.2.2 `lm` with the squared time.
+/// Source: `tests/reference/invented-diagnostics.csv`: 40 digits, and R 4.2.2 `lm` to 11.
 #[test]
 fn bends_of_invented_series_agree_with_r() {
     let mut seen = 0;
@@ -264,7 +291,7 @@ fn square_columns(t: &[f64]) -> Vec<[f64; 3]> {
 #[test]
 fn columns_are_least_squares_without_bounds_and_the_line_with_two() {
     let mut random = Random(57);
-    for _ in 0..100 {
+    for round in 0..100 {
         let mut series = random.series(0.0);
         let start = series.t[0];
         series.t.iter_mut().for_each(|t| *t -= start);
@@ -284,7 +311,10 @@ fn columns_are_least_squares_without_bounds_and_the_line_with_two() {
             max_relative = 1e-9,
             epsilon = 1e-9
         );
-        let censored = random.series(0.4);
+        let mut censored = random.series(0.4);
+        if round % 2 == 0 {
+            censored.mark[0] = Mark::Above;
+        }
         let Ok(line) = censored.fit() else { continue };
         let x: Vec<[f64; 2]> = censored.t.iter().map(|&t| [1.0, t]).collect();
         let found = columns(&x, &censored.y, &censored.mark, [0.0, 0.0], 1.0);
@@ -353,6 +383,12 @@ fn what_cannot_bend_has_no_bend() {
     let few = Series::reported(&steps(6), "9 <5 4 <5 3 <5");
     assert_eq!(curvature(few.points(), &few.fitted()), None);
     assert_eq!(curvature(w02().points(), &few.fitted()), None);
+    let x = [[1.0], [1.0], [1.0]];
+    let (y, mark) = ([1.0, 2.0, 4.0], [Mark::Measured; 3]);
+    assert_eq!(columns(&x, &y, &mark[..2], [0.0], 1.0), None);
+    assert_eq!(columns(&x, &y[..2], &mark, [0.0], 1.0), None);
+    let mean = columns(&x, &y, &mark, [0.0], 1.0).expect("three values");
+    assert_relative_eq!(mean.factors[0], 7.0 / 3.0, max_relative = 1e-9);
     let bowl: Vec<f64> = steps(9).iter().map(|t| (t - 4.0) * (t - 4.0)).collect();
     let exact = Series::measured(&steps(9), &bowl);
     assert_eq!(curvature(exact.points(), &exact.fitted()), None);

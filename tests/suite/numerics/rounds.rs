@@ -100,6 +100,31 @@ fn the_least_number_of_rounds_is_told() {
     assert_eq!(Dates::of(&t).rounds(1e-9, 0.5, &QUARTERLY, 1), None);
 }
 
+/// Source: the definition: an interval that just holds zero asks for one round more at least, even
+/// where an even chance is all that is wanted.
+#[test]
+fn a_rate_that_is_nearly_shown_takes_one_round() {
+    let t = quarters(10);
+    let wave = |i: usize| if i % 2 == 0 { 0.3 } else { -0.3 };
+    let y: Vec<f64> = (0..10).map(wave).collect();
+    let level = Series::measured(&t, &y).fitted();
+    let line = level.line().expect("all measured");
+    let needed = Dates::of(&t).smallest_rate_shown(line.sd(), 0.90).expect("ten dates");
+    let tilted = |share: f64| {
+        let slope = -share * needed - level.slope;
+        let y: Vec<f64> = t.iter().zip(&y).map(|(t, y)| y + slope * t).collect();
+        Series::measured(&t, &y).fitted()
+    };
+    let even = Plan { power: 0.5, ..QUARTERLY };
+    assert_eq!(rounds_to_decisive(&t, &tilted(1.001), &even), Some(0));
+    assert_eq!(rounds_to_decisive(&t, &tilted(0.9995), &even), Some(1));
+    // The level likewise, with a limit at the very end of its interval.
+    let fit = tilted(2.0);
+    let now = fit.level_interval(t[9], 0.90);
+    assert_eq!(rounds_to_level(&t, &fit, now.high + 1e-6, &even), Some(0));
+    assert_eq!(rounds_to_level(&t, &fit, now.high - 1e-6, &even), Some(1));
+}
+
 /// Source: as above, for the level: the chance at r is enough, one round less is not.
 #[test]
 fn the_level_needs_rounds_of_its_own() {
