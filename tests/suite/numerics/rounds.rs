@@ -105,7 +105,7 @@ fn the_least_number_of_rounds_is_told() {
 #[test]
 fn a_rate_that_is_nearly_shown_takes_one_round() {
     let t = quarters(10);
-    let wave = |i: usize| if i % 2 == 0 { 0.3 } else { -0.3 };
+    let wave = |i: usize| if i.is_multiple_of(2) { 0.3 } else { -0.3 };
     let y: Vec<f64> = (0..10).map(wave).collect();
     let level = Series::measured(&t, &y).fitted();
     let line = level.line().expect("all measured");
