@@ -48,7 +48,11 @@ pub fn compare_models(facts: &Facts<'_>, fit: &Fit, points: Points<'_>) -> Shape
         }
     }
     out.alternative = compared.better.map(|better| {
-        let date = y0.and_then(|y0| meets(fit, better.crossing(y0)));
+        let crossing = y0.and_then(|y0| better.crossing(y0));
+        let date = meets(fit, crossing);
+        // A line that rose and falls again may never have been over the limit: no denial.
+        let never_over =
+            crossing.is_none() && matches!(better, Better::TwoRates(two) if two.after < 0.0);
         let after_goal = |date: NaiveDate| facts.series.goal_date.is_some_and(|goal| date > goal);
         Alternative {
             model: match better {
@@ -56,7 +60,7 @@ pub fn compare_models(facts: &Facts<'_>, fit: &Fit, points: Points<'_>) -> Shape
                 Better::TwoRates(_) => Model::TwoRates,
             },
             date,
-            denies: y0.is_some() && date.is_none_or(after_goal),
+            denies: y0.is_some() && !never_over && date.is_none_or(after_goal),
         }
     });
     out

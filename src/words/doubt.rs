@@ -51,6 +51,9 @@ pub fn denial(series: &SeriesFinding) -> Option<String> {
     let code = series.alternative_model?;
     let named = Model::from_code(code).map_or(code, model);
     let says = match series.alternative_date {
+        None if code == Model::TwoRates.code() => {
+            "does not meet the limit and stay there".to_owned()
+        }
         None => "never meets the limit".to_owned(),
         Some(date) => format!("meets it about {}, after the goal", month(date)),
     };

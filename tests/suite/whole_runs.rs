@@ -274,3 +274,19 @@ fn sound_series_are_rarely_flagged() {
         assert!(flagged * 10 < SERIES * 3, "{flagged} of {SERIES}: {counts:?}");
     }
 }
+
+/// A series that rises, falls again and never comes near its limit has two rates and nothing that a
+/// better model could deny.
+#[test]
+fn a_series_that_was_never_over_its_limit_is_not_denied() {
+    let points: Vec<(f64, f64)> = (0..24)
+        .map(|i| {
+            let t = f64::from(i) / 4.0;
+            let ln = if t < 3.0 { 0.6 * t } else { 1.8 - 0.8 * (t - 3.0) };
+            (t, (ln + 0.05 * (f64::from(i) * 2.3).sin()).exp())
+        })
+        .collect();
+    let run = run(&points, 1_000.0, 0.9);
+    assert_eq!(run.cell("alternative_model"), "two-rates");
+    assert!(run.json.contains("\"alternative_denies\": false"), "{}", run.json);
+}

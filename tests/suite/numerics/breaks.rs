@@ -141,9 +141,9 @@ fn a_long_record_with_one_bound_has_the_break_of_least_squares() {
     let n = 20_000;
     let mut random = Random(6);
     let t: Vec<f64> = (0..n).map(|i| i as f64 / 1000.0).collect();
-    for (before, after) in [(-0.1, -0.5), (-0.6, -0.05)] {
+    for (before, after) in [(-0.1, -0.5), (-0.6, -0.05)].repeat(4) {
         let mean = |t: f64| 6.0 + before * (t - 8.0).min(0.0) + after * (t - 8.0).max(0.0);
-        let y: Vec<f64> = t.iter().map(|&t| mean(t) + 0.4 * random.normal()).collect();
+        let y: Vec<f64> = t.iter().map(|&t| mean(t) + 0.8 * random.normal()).collect();
         let mut series = Series::measured(&t, &y);
         let fit = series.fitted();
         let squares = best(&in_time_order(series.points()), &fit).expect("room");

@@ -9,10 +9,11 @@ use proptest::prelude::*;
 
 use super::support::{Random, Series};
 
-/// A random series, its fit, and a level that the line meets some way after the record.
+/// A random series, its fit, and a level that the line meets some way after the record. Every other
+/// seed measures everything.
 fn sound(seed: u64, share: f64) -> Option<(Series, FirstOrder, f64)> {
     let mut random = Random(seed);
-    let series = random.series(share);
+    let series = random.series(if seed.is_multiple_of(2) { 0.0 } else { share });
     let fit = series.fit().ok()?;
     let ahead = random.between(-2.0, 10.0);
     let y0 = fit.fitted(series.t[series.t.len() - 1] + ahead);
